@@ -4,4 +4,5 @@ export default defineConfig({
   dialect: 'postgresql',
   schema: './db/schema/*.ts',
   out: './db/migrations',
+  casing: 'snake_case',
 });
