@@ -2,13 +2,14 @@ import { fileURLToPath } from 'node:url';
 import { createTypeScriptImportResolver } from 'eslint-import-resolver-typescript';
 import importX from 'eslint-plugin-import-x';
 import reactHooks from 'eslint-plugin-react-hooks';
+import { defineConfig } from 'eslint/config';
 import tseslint from 'typescript-eslint';
 import { rooms } from './scripts/lint/rooms.mjs';
 import { noEnvironment, rulesOf } from './scripts/lint/rules.mjs';
 
 const base = fileURLToPath(new URL('.', import.meta.url));
 
-export default tseslint.config(
+export default defineConfig(
   { ignores: ['node_modules/', '.next/', '.data/', 'next-env.d.ts', 'public/'] },
   // A rule is never switched off from inside a file.
   { linterOptions: { noInlineConfig: true, reportUnusedDisableDirectives: 'error' } },

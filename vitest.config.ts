@@ -16,6 +16,7 @@ export default defineConfig({
         test: {
           name: 'integration',
           include: ['tests/integration/**/*.test.ts'],
+          globalSetup: ['tests/support/cluster.ts'],
           testTimeout: 60_000,
           hookTimeout: 60_000,
         },

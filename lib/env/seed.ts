@@ -5,13 +5,13 @@ import { lazyEnv } from '@/lib/env/read';
 const schema = z
   .object({
     DATABASE_URL: databaseUrl,
-    NEXTAUTH_URL: publicUrl,
+    ELLWAND_SERVER_URL: publicUrl,
     ELLWAND_DATA_DIR: z.string().min(1),
     ELLWAND_REPO: z.string().min(1),
   })
   .transform((env) => ({
     databaseUrl: env.DATABASE_URL,
-    serverUrl: env.NEXTAUTH_URL,
+    serverUrl: env.ELLWAND_SERVER_URL,
     dataDir: env.ELLWAND_DATA_DIR,
     repo: env.ELLWAND_REPO,
   }));

@@ -74,7 +74,7 @@ function forbiddenImports(room) {
   return room.noPackages ?? [];
 }
 
-/** @param {Room} room @param {string} base the repository's folder @returns {Record<string, unknown>} */
+/** @param {Room} room @param {string} base the repository's folder @returns {import('eslint').Linter.RulesRecord} */
 export function rulesOf(room, base) {
   const forbidden = forbiddenImports(room);
   const message = `${room.name} may not know this package.`;

@@ -1,0 +1,95 @@
+/** Commands that end by themselves: apt-get, npm ci, initdb, migrations, the build. */
+import { spawn } from 'node:child_process';
+import { accessSync, appendFileSync, constants, mkdirSync } from 'node:fs';
+import { delimiter, dirname, join } from 'node:path';
+import { signalGroup } from './process.mjs';
+import { Trouble } from './trouble.mjs';
+
+/**
+ * @typedef {object} Task
+ * @property {string} what said when it fails
+ * @property {string} command
+ * @property {string[]} args
+ * @property {string} cwd
+ * @property {NodeJS.ProcessEnv} [env]
+ * @property {string} [input] written to its standard input
+ * @property {string} [logFile] its output is appended there
+ * @property {boolean} [show] its output goes to the screen too
+ * @property {AbortSignal} [signal] ends it early
+ */
+
+const LINES_SHOWN = 25;
+
+/**
+ * Runs a task to its end and returns its standard output. It has a process group of its own, so Ctrl-C reaches it only
+ * through `signal`. Throws a Trouble with its last lines when it fails.
+ * @param {Task} task
+ * @returns {Promise<string>}
+ */
+export function runTask(task) {
+  task.signal?.throwIfAborted();
+  return new Promise((resolve, reject) => {
+    const child = spawn(task.command, task.args, {
+      cwd: task.cwd,
+      env: task.env ?? process.env,
+      detached: true,
+      stdio: ['pipe', 'pipe', 'pipe'],
+    });
+    let out = '';
+    let all = '';
+    const stop = () => child.pid !== undefined && signalGroup(child.pid, 'SIGTERM');
+    task.signal?.addEventListener('abort', stop, { once: true });
+    child.stdout.on('data', (chunk) => {
+      out += chunk;
+      keep(chunk);
+    });
+    child.stderr.on('data', keep);
+    // A command that ends without reading its input is judged by its exit code.
+    child.stdin.on('error', () => undefined);
+    child.stdin.end(task.input ?? '');
+    child.once('error', (error) => reject(new Trouble(`${task.what}: ${error.message}`, { cause: error })));
+    child.once('close', (code, signal) => {
+      task.signal?.removeEventListener('abort', stop);
+      if (task.signal?.aborted) reject(task.signal.reason);
+      else if (code === 0) resolve(out);
+      else reject(new Trouble(`${task.what} (${signal ?? `code ${code}`}).\n${lastLines(all)}`));
+    });
+
+    /** @param {Buffer} chunk */
+    function keep(chunk) {
+      all += chunk;
+      if (task.logFile) append(task.logFile, chunk);
+      if (task.show) process.stdout.write(chunk);
+    }
+  });
+}
+
+/** @param {string} file @param {Buffer} chunk */
+function append(file, chunk) {
+  mkdirSync(dirname(file), { recursive: true });
+  appendFileSync(file, chunk, { mode: 0o600 });
+}
+
+/** @param {string} text */
+function lastLines(text) {
+  return text.trimEnd().split('\n').slice(-LINES_SHOWN).join('\n');
+}
+
+/** @param {string} command @returns {string | undefined} its absolute path, looked up in PATH and the system's folders */
+export function findCommand(command) {
+  const folders = [...(process.env.PATH ?? '').split(delimiter), '/usr/bin', '/usr/sbin', '/bin', '/sbin'];
+  return folders
+    .filter(Boolean)
+    .map((folder) => join(folder, command))
+    .find(isExecutable);
+}
+
+/** @param {string} path */
+export function isExecutable(path) {
+  try {
+    accessSync(path, constants.X_OK);
+    return true;
+  } catch {
+    return false;
+  }
+}
