@@ -1,4 +1,3 @@
-/** @type {{ plugins: Record<string, object> }} */
 const config = { plugins: { '@tailwindcss/postcss': {} } };
 
 export default config;
