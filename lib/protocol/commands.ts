@@ -44,7 +44,13 @@ export const movingCommandSchema = z.discriminatedUnion('kind', [
     runId: z.uuid(),
     programSha256: z.string().length(64),
   }),
-  z.object({ kind: z.literal('go-on'), ...moving, runId: z.uuid() }),
+  z.object({
+    kind: z.literal('go-on'),
+    ...moving,
+    runId: z.uuid(),
+    /** A first piece was out of tolerance: hold again after as many pieces as the program asked to be measured. */
+    firstPiecesAgain: z.boolean(),
+  }),
 ]);
 
 /** Commands after which nothing moves that did not move before. Stops need no challenge, fence or age. */

@@ -80,7 +80,7 @@ export const measurePiecesSchema = z.object({
 });
 export const scrapPiecesSchema = z.object({
   runId,
-  kind: z.enum(['scrap', 'sample']),
+  kind: z.enum(['scrap', 'sample', 'doubt']),
   /** May be negative to correct an earlier entry. */
   pieces: z
     .number()
