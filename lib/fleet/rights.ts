@@ -22,6 +22,7 @@ export const RIGHTS = {
   'rigs.write': ['owner'],
   'agents.write': ['owner'],
   'people.write': ['owner'],
+  'workshop.write': ['owner'],
   'setup.read': ['scheduler', 'maintainer', 'owner'],
 } as const satisfies Record<string, readonly Role[]>;
 
