@@ -5,7 +5,7 @@ import { asDatabaseUser, giveToDatabaseUser } from './database-user.mjs';
 import { startChild } from './child.mjs';
 import { pause, waitForPort } from './ports.mjs';
 import { endStranger, identify } from './process.mjs';
-import { findCommand, isExecutable, runTask } from './task.mjs';
+import { findCommand, isExecutable, runTask, systemEnvironment } from './task.mjs';
 import { Trouble } from './trouble.mjs';
 
 const DEBIAN_VERSIONS = '/usr/lib/postgresql';
@@ -56,7 +56,7 @@ export async function startCluster(spec) {
     name: 'PostgreSQL',
     ...asDatabaseUser(folder, join(programs, 'postgres'), ['-D', folder, ...options(spec)]),
     cwd: '/',
-    env: { PATH: process.env.PATH, LC_ALL: 'C.UTF-8' },
+    env: systemEnvironment(),
     logFile: join(spec.dataDir, 'log', 'postgres.log'),
     stopSignal: 'SIGINT',
     ceilingMs: STOP_CEILING_MS,
@@ -127,7 +127,7 @@ async function makeCluster(spec, folder, programs) {
       what: 'The database cluster could not be made',
       ...asDatabaseUser(folder, join(programs, 'initdb'), [...args, ...format]),
       cwd: '/',
-      env: { PATH: process.env.PATH, LC_ALL: 'C.UTF-8' },
+      env: systemEnvironment(),
       logFile: join(spec.dataDir, 'log', 'postgres.log'),
       signal: spec.signal,
     });
@@ -157,7 +157,7 @@ export function runSql(spec, sql, database = 'postgres') {
       String(spec.port),
     ].concat(['-U', 'postgres', '-d', database, '-f', '-']),
     cwd: '/',
-    env: { PATH: process.env.PATH, PGPASSWORD: spec.secrets.databaseAdmin, PGCONNECT_TIMEOUT: '5' },
+    env: { ...systemEnvironment(), PGPASSWORD: spec.secrets.databaseAdmin, PGCONNECT_TIMEOUT: '5' },
     input: sql,
     signal: spec.signal,
   });

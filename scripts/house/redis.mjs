@@ -2,7 +2,7 @@ import { mkdirSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { startChild } from './child.mjs';
 import { waitForPort } from './ports.mjs';
-import { findCommand } from './task.mjs';
+import { findCommand, systemEnvironment } from './task.mjs';
 import { Trouble } from './trouble.mjs';
 
 const START_TIMEOUT_MS = 20_000;
@@ -34,7 +34,7 @@ export async function startRedis(spec) {
     command: findCommand('redis-server') ?? 'redis-server',
     args: [config],
     cwd: '/',
-    env: { PATH: process.env.PATH, LC_ALL: 'C.UTF-8' },
+    env: systemEnvironment(),
     logFile: join(spec.dataDir, 'log', 'redis.log'),
     stopSignal: 'SIGTERM',
     ceilingMs: STOP_CEILING_MS,

@@ -93,3 +93,8 @@ export function isExecutable(path) {
     return false;
   }
 }
+
+/** Environment of the system's programs: nothing of ours, and messages in one language. @returns {NodeJS.ProcessEnv} */
+export function systemEnvironment() {
+  return { NODE_ENV: 'production', PATH: process.env.PATH, LC_ALL: 'C.UTF-8' };
+}
