@@ -1,0 +1,38 @@
+'use client';
+
+import Link from 'next/link';
+import { wallClock } from '@/components/live/time';
+import { useLive } from '@/components/live/live-provider';
+import { needsOf } from '@/lib/fleet/needs';
+import { floorSentence } from '@/lib/fleet/sentence';
+import { routes } from '@/lib/routes';
+import type { RigDto, WaitingDto } from '@/lib/schemas/floor';
+
+/** The floor's first lines: what is to be done, then who must go where with what in hand. */
+export function FloorHead({ rigs, waiting }: { rigs: RigDto[]; waiting: WaitingDto }) {
+  const { nowMs, timeZone } = useLive();
+  const needs = needsOf(rigs);
+  const sentence = floorSentence(rigs, needs, waiting, (at) => wallClock(at, timeZone, nowMs));
+  return (
+    <section aria-label="What is to be done" className="page pt-5 pb-4">
+      <h1 className="text-[25px] leading-snug font-normal">
+        <strong>{sentence.urgent}</strong> {sentence.rest}
+      </h1>
+      <ul className="mt-2" aria-label="Who must go where">
+        {needs.map((need) => (
+          <li key={need.rigId}>
+            <Link
+              href={routes.rig(need.rigId)}
+              className="flex min-h-11 flex-wrap items-center gap-x-3 hover:underline"
+            >
+              <span aria-hidden className={`h-4 w-6 shrink-0 ${need.urgent ? 'hatch-signal' : 'hatch'}`} />
+              <span className="name">{need.rigName}</span>
+              <span>{need.happened}</span>
+              <span className="text-soft">{need.bring}</span>
+            </Link>
+          </li>
+        ))}
+      </ul>
+    </section>
+  );
+}

@@ -1,0 +1,71 @@
+'use client';
+
+import { QueryClient, QueryClientProvider } from '@tanstack/react-query';
+import { createContext, useContext, useEffect, useMemo, useState, type ReactNode } from 'react';
+import { LIVE_TICK_MS } from '@/lib/schemas/floor';
+import { routes } from '@/lib/routes';
+import { applyLive } from './apply-live';
+import { openLiveLink } from './live-link';
+
+interface Live {
+  /** The server's time, in ms, told once a second. */
+  nowMs: number;
+  /** No word from the server for twice its tick: what is shown is old. */
+  lost: boolean;
+  /** The workshop's time zone. */
+  timeZone: string;
+}
+
+const LiveContext = createContext<Live | null>(null);
+
+/** The live state of the page. @throws Error outside a `LiveProvider`. */
+export function useLive(): Live {
+  const live = useContext(LiveContext);
+  if (!live) throw new Error('useLive needs a LiveProvider above it');
+  return live;
+}
+
+/** Follows the server's clock and the state of the link; ticks once a second. */
+function useLink(client: QueryClient, serverAt: string): { nowMs: number; lost: boolean } {
+  const [clock, setClock] = useState({ nowMs: Date.parse(serverAt), lost: false });
+  useEffect(() => {
+    let skewMs = Date.parse(serverAt) - Date.now();
+    let heardMs = Date.now();
+    const link = openLiveLink((message) => {
+      heardMs = Date.now();
+      skewMs = Date.parse(message.at) - heardMs;
+      if (message.kind === 'session-ended') window.location.assign(routes.signIn());
+      else applyLive(client, message);
+    });
+    const timer = setInterval(() => {
+      const nowMs = Date.now();
+      setClock({ nowMs: nowMs + skewMs, lost: nowMs - heardMs > LIVE_TICK_MS * 2 });
+    }, 1_000);
+    return () => {
+      clearInterval(timer);
+      link.close();
+    };
+  }, [client, serverAt]);
+  return clock;
+}
+
+interface LiveProviderProps {
+  timeZone: string;
+  /** The server's time when the page was made. */
+  serverAt: string;
+  children: ReactNode;
+}
+
+/** Queries and the event stream for everything below. */
+export function LiveProvider({ timeZone, serverAt, children }: LiveProviderProps) {
+  const [client] = useState(
+    () => new QueryClient({ defaultOptions: { queries: { staleTime: 5_000, retry: 1 } } }),
+  );
+  const { nowMs, lost } = useLink(client, serverAt);
+  const live = useMemo(() => ({ nowMs, lost, timeZone }), [nowMs, lost, timeZone]);
+  return (
+    <QueryClientProvider client={client}>
+      <LiveContext value={live}>{children}</LiveContext>
+    </QueryClientProvider>
+  );
+}
