@@ -1,6 +1,6 @@
 import type { Profile } from './profile';
 import { readEnd, readHome, readPiece, readPreamble, readRegister, readTrim } from './reading/parts-reader';
-import { PartRefused, SectionReader } from './reading/section-reader';
+import { type Carried, PartRefused, SectionReader } from './reading/section-reader';
 import { MOST_PROBLEMS, type Section, sectionsOf } from './reading/sections';
 import type { ProgramProblem, ProgramReading, ProgramStep, ReadProgram } from './steps';
 
@@ -18,6 +18,7 @@ interface Walk {
   profile: Profile;
   problems: ProgramProblem[];
   program: ReadProgram;
+  carried: Carried;
   /** E units of the first piece: every piece of a run has the same length. */
   pieceUnits: number | null;
 }
@@ -31,7 +32,7 @@ function readPieceSection(walk: Walk, reader: SectionReader, section: Section): 
 
 function readSection(walk: Walk, section: Section): ProgramStep[] {
   const { profile, problems, program } = walk;
-  const reader = new SectionReader(section, profile, problems, profile.cutAxis.standbyMm);
+  const reader = new SectionReader(section, profile, problems, walk.carried);
   readThrough(reader, () => {
     switch (section.part) {
       case 'preamble':
@@ -70,7 +71,9 @@ export function readProgram(text: string, profile: Profile): ProgramReading {
   };
   // Where lines are unreadable or parts out of order, reading on would only echo that.
   if (problems.length > 0) return { ok: false, problems: problems.slice(0, MOST_PROBLEMS) };
-  const walk: Walk = { profile, problems, program, pieceUnits: null };
+  // Where the cut axis stands before it is homed is unknown; no move may come before its declaration.
+  const carried = { cutAxisMm: Number.NaN, pendingMs: 0, known: new Map<string, ProgramStep>() };
+  const walk: Walk = { profile, problems, program, carried, pieceUnits: null };
   for (const section of sections) {
     const steps = readSection(walk, section);
     if (section.part === 'piece') program.pieces.push(steps);

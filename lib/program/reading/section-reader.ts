@@ -27,23 +27,36 @@ function isMeaning<Is extends Meaning['is']>(
   return meaning.is === is;
 }
 
+/** What one part hands to the next: where the cut axis is sent, and the motion that no `M400` has awaited. */
+export interface Carried {
+  cutAxisMm: number;
+  pendingMs: number;
+  /** One object for equal steps: thousands of pieces differ in their register lines alone. */
+  known: Map<string, ProgramStep>;
+}
+
 /** Walks along the commands of one part and takes each only as what must stand there. */
 export class SectionReader {
   readonly steps: ProgramStep[] = [];
   private at = 0;
   private fedTo = 0;
-  private movingMs = 0;
 
-  /** `startsAtMm` is where the cut axis stands before the part's first line. */
   constructor(
     private readonly section: Section,
     private readonly profile: Profile,
     private readonly problems: ProgramProblem[],
-    private cutAxisAtMm: number,
+    private readonly carried: Carried,
   ) {}
 
   complain(message: string | null, lineNumber = this.section.lineNumber): void {
     if (message !== null) this.problems.push({ lineNumber, message });
+  }
+
+  private push(step: ProgramStep): void {
+    const key = `${step.kind} ${step.expectedMs} ${step.line}`;
+    const equal = this.carried.known.get(key) ?? step;
+    this.carried.known.set(key, equal);
+    this.steps.push(equal);
   }
 
   private next(): { command: Command; meaning: Meaning } | null {
@@ -78,27 +91,27 @@ export class SectionReader {
         this.complain('This setting is not wanted here, or stands twice.', command.lineNumber);
         throw new PartRefused();
       }
-      this.steps.push({ line: command.text, expectedMs: 0, kind: 'setting' });
+      this.push({ line: command.text, expectedMs: 0, kind: 'setting' });
     }
   }
 
   home(): void {
     const { command } = this.take('home');
-    this.steps.push({ line: command.text, expectedMs: homingMs(this.profile), kind: 'home' });
+    this.push({ line: command.text, expectedMs: homingMs(this.profile), kind: 'home' });
   }
 
   declare(): void {
     const { command, meaning } = this.take('declare');
     const { cutAxisMm } = meaning;
     this.complain(positionProblem(this.profile, 'home', cutAxisMm), command.lineNumber);
-    this.cutAxisAtMm = cutAxisMm;
-    this.steps.push({ line: command.text, expectedMs: 0, kind: 'declare', cutAxisMm });
+    this.carried.cutAxisMm = cutAxisMm;
+    this.push({ line: command.text, expectedMs: 0, kind: 'declare', cutAxisMm });
   }
 
   zeroFeed(): void {
     const { command } = this.take('zero-feed');
     this.fedTo = 0;
-    this.steps.push({ line: command.text, expectedMs: 0, kind: 'zero-feed' });
+    this.push({ line: command.text, expectedMs: 0, kind: 'zero-feed' });
   }
 
   /** One feed or more, each on from the last; gives the E coordinate of the last. */
@@ -109,9 +122,9 @@ export class SectionReader {
       this.complain(feedProblem(this.profile, this.fedTo, meaning), command.lineNumber);
       const distanceMm = Math.max(0, meaning.feedTo - this.fedTo) / feed.feedPerMm;
       const expectedMs = travelMs(distanceMm, feed.speedMmS, feed.accelerationMmS2);
-      this.movingMs += expectedMs;
+      this.carried.pendingMs += expectedMs;
       this.fedTo = meaning.feedTo;
-      this.steps.push({ line: command.text, expectedMs, kind: 'feed', feedTo: meaning.feedTo });
+      this.push({ line: command.text, expectedMs, kind: 'feed', feedTo: meaning.feedTo });
     } while (this.next()?.meaning.is === 'feed');
     return this.fedTo;
   }
@@ -123,23 +136,23 @@ export class SectionReader {
     const { cutAxisMm } = meaning;
     this.complain(positionProblem(this.profile, kind, cutAxisMm), command.lineNumber);
     this.complain(pressSpeedProblem(this.profile, meaning.mmPerMin), command.lineNumber);
-    const distanceMm = Math.abs(cutAxisMm - this.cutAxisAtMm);
+    const distanceMm = Math.abs(cutAxisMm - this.carried.cutAxisMm);
     const expectedMs = travelMs(distanceMm, cutAxis.speedMmS, cutAxis.accelerationMmS2);
-    this.movingMs += expectedMs;
-    this.cutAxisAtMm = cutAxisMm;
-    this.steps.push({ line: command.text, expectedMs, kind, cutAxisMm });
+    this.carried.pendingMs += expectedMs;
+    this.carried.cutAxisMm = cutAxisMm;
+    this.push({ line: command.text, expectedMs, kind, cutAxisMm });
   }
 
   /** `M400`: its ok stays away until all that moves has come to rest. */
   rest(): void {
     const { command } = this.take('await');
-    this.steps.push({ line: command.text, expectedMs: this.movingMs, kind: 'await' });
-    this.movingMs = 0;
+    this.push({ line: command.text, expectedMs: this.carried.pendingMs, kind: 'await' });
+    this.carried.pendingMs = 0;
   }
 
   ask(): void {
     const { command } = this.take('ask');
-    this.steps.push({ line: command.text, expectedMs: 0, kind: 'ask' });
+    this.push({ line: command.text, expectedMs: 0, kind: 'ask' });
   }
 
   /** The counting line of a piece; gives its register, `null` where the profile has no axis for one. */

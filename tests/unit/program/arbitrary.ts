@@ -43,9 +43,9 @@ const feed = fc
     feedPerMm: real(0.1, 10),
     speedMmS: real(1, 300),
     accelerationMmS2: real(10, 5000),
-    longestMoveMm: real(1, 150),
+    longestMoveMm: real(5, 150),
     shortestPieceMm: real(1, 100),
-    spanMm: real(0, 2000),
+    spanMm: real(0, 1500),
     trimMm: real(0.5, 60),
   })
   .map(({ spanMm, ...rest }) => ({ ...rest, longestPieceMm: rest.shortestPieceMm + spanMm }));
@@ -68,7 +68,7 @@ export const profilesWithOrders: fc.Arbitrary<{ profile: Profile; order: RunOrde
     fc
       .record({
         tag: fc.integer({ min: 1, max: 99 }),
-        pieces: fc.integer({ min: 1, max: 12 }),
+        pieces: fc.integer({ min: 1, max: 5 }),
         lengthMm: real(profile.feed.shortestPieceMm, profile.feed.longestPieceMm),
       })
       .map((order) => ({ profile, order })),
