@@ -25,7 +25,10 @@ export type ProgramStep = { line: string; expectedMs: number } & (
   | { kind: 'register'; register: number | null; piece: number }
 );
 
-/** A program taken apart; equal steps may be one object. `pieces[n - 1]` holds the steps of piece n; without a register axis there is no tag. */
+/**
+ * A program taken apart. `pieces[n - 1]` holds the steps of piece n; without a register axis there is no tag. Equal
+ * steps may be one object: never change them.
+ */
 export interface ReadProgram {
   tag: number | null;
   preamble: ProgramStep[];
