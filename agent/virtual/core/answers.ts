@@ -46,13 +46,13 @@ export class Answers {
 
   /** Sends one line of the firmware at `nowMs`. */
   send(line: string, nowMs: number): void {
-    if (nowMs < this.mutedUntilMs) return;
+    if (nowMs < this.mutedUntilMs || (/^ok\b/.test(line) && this.take('swallow'))) return;
     if (!/^ok\b/.test(line)) this.hold(`${line}\n`, nowMs);
-    else if (this.take('swallow')) return;
     else if (this.take('split')) {
       this.hold(line.slice(0, 1), nowMs);
       this.hold(`${line.slice(1)}\n`, nowMs + SPLIT_GAP_MS * this.speed);
     } else this.hold(this.take('double') ? `${line}\n${line}\n` : `${line}\n`, nowMs);
+    this.advanceTo(nowMs);
   }
 
   private take(fault: OkFault): boolean {
@@ -65,6 +65,5 @@ export class Answers {
   private hold(text: string, atMs: number): void {
     const last = this.waiting[this.waiting.length - 1];
     this.waiting.push({ text, atMs: Math.max(atMs, last?.atMs ?? atMs) });
-    this.advanceTo(atMs);
   }
 }

@@ -39,6 +39,7 @@ export const controlRequestSchema = z.discriminatedUnion('do', [
   z.strictObject({ do: z.literal('busy'), ms: wallMs }),
   z.strictObject({ do: z.literal('heater'), warmsToC: mm.nullable() }),
   z.strictObject({ do: z.literal('hand-move'), axis: z.enum(['X', 'Y', 'Z', 'E']), mm }),
+  z.strictObject({ do: z.literal('hand-place'), axis: z.enum(['X', 'Y', 'Z']), atMm: mm }),
 ]);
 
 export type ControlInput = z.input<typeof controlRequestSchema>;

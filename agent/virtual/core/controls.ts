@@ -27,6 +27,9 @@ const verbs: Verbs = {
   busy: (core, { ms }) => core.firmware.executor.stall(ms * core.settings.speed),
   heater: (core, { warmsToC }) => void (core.mechanics.heater.faultC = warmsToC ?? undefined),
   'hand-move': (core, { axis, mm }) => ({ atMm: core.mechanics.moveByHand(axis, mm) }),
+  'hand-place': ({ mechanics }, { axis, atMm }) => ({
+    atMm: mechanics.moveByHand(axis, atMm - mechanics.positionMm[axis]),
+  }),
 };
 
 /** Does one thing to the rig, at its present moment. @returns what the answer carries beside `ok`. */

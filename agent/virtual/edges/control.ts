@@ -23,6 +23,7 @@
  *   {"do":"busy","ms":5000}                    nothing is carried out, `busy` is answered
  *   {"do":"heater","warmsToC":90}              the heater warms by fault; null ends it
  *   {"do":"hand-move","axis":"Z","mm":-2}      somebody turns an axis
+ *   {"do":"hand-place","axis":"Z","atMm":0}    somebody puts an axis at a place of the machine's own frame
  */
 import { mkdirSync, rmSync } from 'node:fs';
 import { createServer, type Socket } from 'node:net';
