@@ -1,0 +1,55 @@
+import { and, eq, gt, isNull } from 'drizzle-orm';
+import { agents } from '@/db/schema/rigs';
+import { EllwandError } from '@/lib/errors';
+import { type PairingAnswer, pairingSchema } from '@/lib/protocol/pairing';
+import { audit } from '../audit';
+import type { ServiceContext } from '../context';
+import { parseInput } from '../parse';
+import { tell } from '../tell';
+import { inTransaction } from '../transaction';
+import { hashSecret, hashesMatch, newToken, plainCode } from './secrets';
+
+/**
+ * Trades a one-time code for a token, told this once. The code is used up by it.
+ * @throws EllwandError `pairing-refused` for a code that is wrong, used or too old.
+ */
+export async function pairAgent({
+  ctx,
+  input,
+}: {
+  ctx: ServiceContext;
+  input: unknown;
+}): Promise<PairingAnswer> {
+  const { code, software } = parseInput(pairingSchema, input);
+  const codeHash = hashSecret(plainCode(code));
+  const token = newToken();
+  return inTransaction(ctx, async (inner) => {
+    const [agent] = await inner.db
+      .select()
+      .from(agents)
+      .where(
+        and(
+          eq(agents.pairingCodeHash, codeHash),
+          gt(agents.pairingExpiresAt, inner.now),
+          isNull(agents.revokedAt),
+        ),
+      )
+      .for('update');
+    if (!agent?.pairingCodeHash || !hashesMatch(agent.pairingCodeHash, codeHash)) {
+      throw new EllwandError('pairing-refused');
+    }
+    await inner.db
+      .update(agents)
+      .set({
+        tokenHash: hashSecret(token),
+        pairingCodeHash: null,
+        pairingExpiresAt: null,
+        pairedAt: inner.now,
+        software,
+      })
+      .where(eq(agents.id, agent.id));
+    await audit(inner, 'agent.paired', `agent:${agent.id}`, { software });
+    await tell(inner, { news: 'agent', agentId: agent.id });
+    return { agentId: agent.id, name: agent.name, token };
+  });
+}
