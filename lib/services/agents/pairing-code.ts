@@ -1,4 +1,5 @@
-import { createHash, randomInt } from 'node:crypto';
+import { randomInt } from 'node:crypto';
+import { hashSecret, plainCode } from '../traffic/secrets';
 
 /** No letter that is taken for a digit or for another letter when it is read out. */
 const ALPHABET = '23456789ABCDEFGHJKMNPQRSTUVWXYZ';
@@ -9,14 +10,9 @@ const GROUP_LENGTH = 4;
 export const PAIRING_VALID_MS = 30 * 60_000;
 
 /** A new one-time code, `K7WQ-…` in four groups of four: about 79 bits, so a plain digest of it may be stored. */
-export function makePairingCode(): string {
+export function makePairingCode(): { code: string; hash: string } {
   const group = () =>
     Array.from({ length: GROUP_LENGTH }, () => ALPHABET[randomInt(ALPHABET.length)]).join('');
-  return Array.from({ length: GROUPS }, group).join('-');
-}
-
-/** What is stored of a code; case, spaces and hyphens of the typed one do not matter. */
-export function hashPairingCode(code: string): string {
-  const plain = code.toUpperCase().replaceAll(/[^0-9A-Z]/g, '');
-  return createHash('sha256').update(plain).digest('hex');
+  const code = Array.from({ length: GROUPS }, group).join('-');
+  return { code, hash: hashSecret(plainCode(code)) };
 }
