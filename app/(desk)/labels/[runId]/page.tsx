@@ -1,0 +1,50 @@
+import type { Metadata } from 'next';
+import { notFound } from 'next/navigation';
+import { z } from 'zod';
+import { wallClock } from '@/components/live/time';
+import { BagLabel } from '@/components/label/bag-label';
+import { PrintButton } from '@/components/label/print-button';
+import { LinkButton } from '@/components/ui/button';
+import { PageHead } from '@/components/ui/page-head';
+import { pageContext } from '@/lib/auth/page-context';
+import { qrCodeSvg } from '@/lib/http/barcode';
+import { routes } from '@/lib/routes';
+import { readBag } from '@/lib/services/floor/read-bag';
+import { readWorkshop } from '@/lib/services/workshop/read-workshop';
+
+export const metadata: Metadata = { title: 'Label' };
+
+const paramsSchema = z.object({ runId: z.uuid() });
+
+export default async function LabelPage({ params }: { params: Promise<unknown> }) {
+  const parsed = paramsSchema.safeParse(await params);
+  if (!parsed.success) notFound();
+  const ctx = await pageContext();
+  const [bag, workshop] = await Promise.all([readBag({ ctx, input: parsed.data }), readWorkshop({ ctx })]);
+  return (
+    <>
+      <div className="no-print">
+        <PageHead
+          title={`Label of bag ${bag.code}`}
+          actions={
+            <>
+              <PrintButton />
+              <LinkButton href={routes.floor()} size="rig">
+                To the floor
+              </LinkButton>
+            </>
+          }
+        >
+          Stick it on the bag before you empty the next tray.
+        </PageHead>
+      </div>
+      <div className="page py-6">
+        <BagLabel
+          bag={bag}
+          barcodeSvg={qrCodeSvg(bag.code)}
+          at={wallClock(bag.clearedAt, workshop.timeZone, ctx.now.getTime())}
+        />
+      </div>
+    </>
+  );
+}
