@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { rememberedSchema } from './memory';
 
 const ofRig = { rigId: z.uuid() };
 const ofRun = { ...ofRig, runId: z.uuid() };
@@ -22,6 +23,16 @@ export const journalNoteSchema = z.discriminatedUnion('note', [
   /** Stopping was asked for; it ends when the rig stands still. */
   z.object({ note: z.literal('run-stopping'), ...ofRun, personId: z.uuid().nullable() }),
   z.object({ note: z.literal('tray-cleared'), ...ofRun }),
+  /** Everything that the notes and events before it say, so that they need not be read again. */
+  z.object({
+    note: z.literal('snapshot'),
+    rigs: z.array(z.object({ rigId: z.uuid(), memory: rememberedSchema })),
+  }),
 ]);
 
 export type JournalNote = z.infer<typeof journalNoteSchema>;
+
+/** Whether a note alone tells all that came before it. */
+export function isSnapshot(note: JournalNote): boolean {
+  return note.note === 'snapshot';
+}

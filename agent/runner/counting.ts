@@ -1,0 +1,36 @@
+import type { PositionReport } from '@/agent/dialect/position';
+import type { Reply } from '@/agent/dialect/reply';
+import { pieceLengthMm } from './measures';
+import type { Turn } from './turn';
+
+/** A line's answer: `sure` is false when the firmware has the line and what it answered may be lost. */
+export interface Answered {
+  sure: boolean;
+  replies: readonly Reply[];
+}
+
+export function positionIn(replies: readonly Reply[]): PositionReport | null {
+  const told = replies.findLast((reply) => reply.kind === 'position');
+  return told?.kind === 'position' ? told.position : null;
+}
+
+/** Whether the rig shows this number in its register; without one its ok is all there is. */
+export function shows(turn: Turn, register: number | null, { sure, replies }: Answered): boolean {
+  const axis = turn.state.profile.registerAxis;
+  return axis === null || register === null ? sure : positionIn(replies)?.[axis] === register;
+}
+
+/** Law 1: counted once, and only when the rig said so. */
+export function countPiece(turn: Turn, piece: number): void {
+  const { run, rigId } = turn.state;
+  if (!run || piece !== run.cut + 1) return;
+  turn.setRun({ cut: piece, openCut: null, refusal: null });
+  turn.event({
+    kind: 'piece-cut',
+    rigId,
+    runId: run.order.runId,
+    piece,
+    wireMm: pieceLengthMm(run),
+    jawsClosedAt: new Date(run.jawsClosedMs ?? turn.nowMs).toISOString(),
+  });
+}
