@@ -96,6 +96,21 @@ export const clearTraySchema = z.object({
   sampled: z.number().int().min(0).max(9999),
 });
 
+/** Takes a prepared run off a rig that is heard: nothing was cut yet. */
+export const dropRunSchema = z.object({
+  runId,
+  reason: z.string().trim().min(3, 'Say why, in a few words.').max(200),
+});
+export const beginWorkHoldSchema = z.object({
+  rigId: z.uuid(),
+  reason: z.string().trim().max(200).default(''),
+});
+export const endWorkHoldSchema = z.object({ rigId: z.uuid() });
+export const showCodeSchema = z.object({ rigId: z.uuid() });
+export const confirmBagSchema = z.object({
+  code: z.string().trim().toUpperCase().min(4, 'Scan the label, or type its code.').max(40),
+});
+
 /** What became of a command: `waiting` when the rig did not answer within the wait. */
 export const commandOutcomeSchema = z.object({
   commandId: z.uuid(),
