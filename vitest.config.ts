@@ -26,6 +26,7 @@ export default defineConfig({
         test: {
           name: 'browser',
           include: ['tests/browser/**/*.test.ts'],
+          globalSetup: ['tests/support/web-build.ts'],
           testTimeout: 180_000,
           hookTimeout: 120_000,
           fileParallelism: false,

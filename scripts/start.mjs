@@ -54,6 +54,14 @@ for (const name of /** @type {const} */ (['SIGINT', 'SIGTERM', 'SIGHUP'])) {
   process.on(name, () => stopping.abort(new Trouble('Stopped before everything was up.')));
 }
 
+// Whoever reads our words may go away (a closed terminal, `| head`); what runs must still be stopped in order.
+for (const stream of [process.stdout, process.stderr]) stream.on('error', () => undefined);
+process.on('uncaughtException', (error) => {
+  printTrouble(error);
+  process.exitCode = 1;
+  stopping.abort(error);
+});
+
 try {
   await start(process.argv.slice(2));
 } catch (error) {

@@ -14,7 +14,8 @@ import { Trouble } from './trouble.mjs';
  * @param {string} dataDir @param {string} address said to whoever comes second
  */
 export function takeLock(dataDir, address) {
-  mkdirSync(dataDir, { recursive: true });
+  // The database's user passes through it; nobody lists it.
+  mkdirSync(dataDir, { recursive: true, mode: 0o711 });
   const file = join(dataDir, 'start.lock');
   const mine = { identity: identify(process.pid), address };
   const draft = `${file}.${process.pid}`;

@@ -59,6 +59,9 @@ function readPort(setting, text, byDefault) {
   throw new Trouble(`${setting}="${text}" is no port: give a whole number from 1 to 65535.`);
 }
 
+/** All tests of one checkout share a build: it knows nothing of the instance that serves it. */
+export const TEST_NEXT_DIST = '.next/test';
+
 /** A shared build folder would be pulled away under a running instance, so each data folder has its own. */
 export function nextDistOf(/** @type {string} */ dataDir) {
   if (dataDir === join(repo, '.data')) return '.next/main';

@@ -96,5 +96,8 @@ export function isExecutable(path) {
 
 /** Environment of the system's programs: nothing of ours, and messages in one language. @returns {NodeJS.ProcessEnv} */
 export function systemEnvironment() {
-  return { NODE_ENV: 'production', PATH: process.env.PATH, LC_ALL: 'C.UTF-8' };
+  const { PATH, ELLWAND_TEST_RUN } = process.env;
+  // The mark by which a test run finds whatever it has left running.
+  const mark = ELLWAND_TEST_RUN === undefined ? {} : { ELLWAND_TEST_RUN };
+  return { NODE_ENV: 'production', PATH, LC_ALL: 'C.UTF-8', ...mark };
 }

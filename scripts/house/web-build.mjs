@@ -18,7 +18,7 @@ const FILES = [
 
 /**
  * Builds the web into `nextDist` (below the repository) when it is stale.
- * @param {{nextDist: string, logFile: string, say: (sentence: string) => void, signal?: AbortSignal}} options
+ * @param {{nextDist: string, logFile?: string, say: (sentence: string) => void, signal?: AbortSignal}} options
  */
 export async function ensureWebBuild({ nextDist, logFile, say, signal }) {
   const mark = join(repo, nextDist, 'ellwand-sources');

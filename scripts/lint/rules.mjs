@@ -34,7 +34,8 @@ const ENVIRONMENT = [
     message: 'The environment is parsed once, in lib/env.',
   },
   {
-    selector: 'ImportDeclaration[source.value=/^(node:)?process$/]',
+    selector:
+      ':matches(ImportDeclaration, ExportNamedDeclaration, ImportExpression)[source.value=/^(node:)?process$/]',
     message: 'The environment is parsed once, in lib/env.',
   },
 ];
