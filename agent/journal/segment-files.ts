@@ -1,4 +1,4 @@
-import { mkdir, open, readdir, rename, rm, type FileHandle } from 'node:fs/promises';
+import { mkdir, open, readdir, rename, rm } from 'node:fs/promises';
 import { join } from 'node:path';
 import { encodeCheckedLine } from './checked-line';
 import { syncFolder, writeDurably } from './durable-file';
@@ -45,10 +45,18 @@ export async function createSegment(folder: string, head: SegmentHead): Promise<
   return { number: head.segment, path, sizeBytes: line.length, handle: await open(path, 'r+') };
 }
 
+/** What the journal needs of an open file. */
+export interface SegmentHandle {
+  write(bytes: Buffer, offset: number, length: number, position: number): Promise<{ bytesWritten: number }>;
+  datasync(): Promise<void>;
+  truncate(length: number): Promise<void>;
+  close(): Promise<void>;
+}
+
 /** The segment that is being written; `sizeBytes` counts only what is synced. */
 export interface OpenSegment extends Numbered {
   sizeBytes: number;
-  handle: FileHandle;
+  handle: SegmentHandle;
 }
 
 /**
