@@ -16,13 +16,17 @@ import { showCode as showCodeService } from '@/lib/services/runs/show-code';
 import { startRun } from '@/lib/services/runs/start-run';
 import { stopRun } from '@/lib/services/runs/stop-run';
 import type { ActionResult } from '@/lib/schemas/action-result';
-import type { CommandOutcome } from '@/lib/schemas/run';
+import { type CommandOutcome, commandOutcomeSchema } from '@/lib/schemas/run';
 import type { PersonActor, ServiceContext } from '@/lib/services/context';
 
-type Service = (call: { ctx: ServiceContext; input: unknown }) => Promise<CommandOutcome | void>;
+type Service = (call: { ctx: ServiceContext; input: unknown }) => Promise<unknown>;
 
+/** Some verbs ask the rig and answer its outcome; the others change only what is stored here. */
 function run(service: Service, input: unknown): Promise<ActionResult<CommandOutcome | null>> {
-  return action(async (ctx: ServiceContext<PersonActor>) => (await service({ ctx, input })) ?? null);
+  return action(async (ctx: ServiceContext<PersonActor>) => {
+    const outcome = commandOutcomeSchema.safeParse(await service({ ctx, input }));
+    return outcome.success ? outcome.data : null;
+  });
 }
 
 export async function acknowledgeNotes(input: unknown) {

@@ -21,3 +21,16 @@ export function ageWords(agoMs: number): string {
   if (seconds < 48 * 3600) return `${Math.round(seconds / 3600)} h`;
   return `${Math.round(seconds / 86_400)} days`;
 }
+
+/** A moment with its date, for paper: `1 Dec 2026, 14:05`. */
+export function datedClock(at: string, timeZone: string): string {
+  const format = {
+    timeZone,
+    day: 'numeric',
+    month: 'short',
+    year: 'numeric',
+    hour: '2-digit',
+    minute: '2-digit',
+  } as const;
+  return new Intl.DateTimeFormat('en-GB', format).format(new Date(at));
+}

@@ -1,7 +1,7 @@
 import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
 import { z } from 'zod';
-import { wallClock } from '@/components/live/time';
+import { datedClock } from '@/components/live/time';
 import { BagLabel } from '@/components/label/bag-label';
 import { PrintButton } from '@/components/label/print-button';
 import { LinkButton } from '@/components/ui/button';
@@ -42,7 +42,7 @@ export default async function LabelPage({ params }: { params: Promise<unknown> }
         <BagLabel
           bag={bag}
           barcodeSvg={qrCodeSvg(bag.code)}
-          at={wallClock(bag.clearedAt, workshop.timeZone, ctx.now.getTime())}
+          at={datedClock(bag.clearedAt, workshop.timeZone)}
         />
       </div>
     </>
