@@ -13,7 +13,7 @@ import { issueCommand } from '../traffic/issue-command';
 import { inTransaction } from '../transaction';
 
 /**
- * "I am working on this rig." It holds for the server at once; the rig's answer says that it stands still. `null` for
+ * "I am working on this rig." It holds for the server at once; the rig's answer says that it stands still. Nothing for
  * a rig without an agent, which moves nothing of ours.
  * @throws EllwandError `work-hold` when somebody's hold stands already.
  */
@@ -23,7 +23,7 @@ export async function beginWorkHold({
 }: {
   ctx: ServiceContext;
   input: unknown;
-}): Promise<CommandOutcome | null> {
+}): Promise<CommandOutcome | undefined> {
   const { personId } = authorise(ctx, 'rigs.hold');
   const { rigId, reason } = parseInput(beginWorkHoldSchema, input);
   const commandId = await inTransaction(ctx, async (inner) => {
@@ -39,5 +39,5 @@ export async function beginWorkHold({
     await causes(inner, { topic: 'dispatch', payload: { because: 'work hold begun' } });
     return rig.agentId ? issueCommand(inner, personId, { kind: 'begin-work-hold', rigId }) : null;
   });
-  return commandId === null ? null : awaitOutcome(ctx, commandId);
+  return commandId === null ? undefined : awaitOutcome(ctx, commandId);
 }

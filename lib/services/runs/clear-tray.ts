@@ -13,12 +13,11 @@ import { causes, tell } from '../tell';
 import { issueCommand } from '../traffic/issue-command';
 import { inTransaction } from '../transaction';
 import { freeLot } from './free-lot';
-import { type LockedRun, lockRun } from './lock-run';
+import { lockRun } from './lock-run';
 import { pieceSums } from './piece-sums';
+import type { RunRow } from './run-columns';
 import { lockLot, splitLot } from './split-lot';
 import { stepLot } from './step-lot';
-
-type RunRow = LockedRun['run'];
 
 /** Enters what was found at the tray, then counts what is left. @throws EllwandError `bad-input` for more than was cut. */
 async function countBag(
@@ -67,19 +66,13 @@ async function bagLot(ctx: ServiceContext<PersonActor>, run: RunRow, pieces: num
 
 /**
  * A person emptied the tray: `scrapped` and `sampled` are what they found there beyond what was entered before. The
- * bag gets its count and its code; the rig is free for the next lot. Answers the code; null when there is no bag.
+ * bag gets its count and its code (`readBag`; no piece, no bag); the rig is free for the next lot.
  * @throws EllwandError `illegal-step` unless the run is over, `bad-input` for more than was cut.
  */
-export async function clearTray({
-  ctx,
-  input,
-}: {
-  ctx: ServiceContext;
-  input: unknown;
-}): Promise<string | null> {
+export async function clearTray({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
   const actor = authorise(ctx, 'runs.operate');
   const { runId, scrapped, sampled } = parseInput(clearTraySchema, input);
-  return inTransaction({ ...ctx, actor }, async (inner) => {
+  await inTransaction({ ...ctx, actor }, async (inner) => {
     const { rig, run } = await lockRun(inner, runId);
     if (run.state !== 'ended' && run.state !== 'released') throw new EllwandError('illegal-step');
     const pieces = await countBag(inner, run, { scrapped, sampled });
@@ -90,6 +83,5 @@ export async function clearTray({
     await audit(inner, 'tray.clear', `run:${runId}`, { pieces, code });
     await tell(inner, { news: 'rig', rigId: rig.id });
     await causes(inner, { topic: 'dispatch', payload: { because: 'tray cleared' } });
-    return code;
   });
 }

@@ -22,7 +22,7 @@ export async function endWorkHold({
 }: {
   ctx: ServiceContext;
   input: unknown;
-}): Promise<CommandOutcome | null> {
+}): Promise<CommandOutcome | undefined> {
   const { personId } = authorise(ctx, 'rigs.hold');
   const { rigId } = parseInput(endWorkHoldSchema, input);
   const commandId = await inTransaction(ctx, async (inner) => {
@@ -40,5 +40,5 @@ export async function endWorkHold({
     await causes(inner, { topic: 'dispatch', payload: { because: 'work hold ended' } });
     return rig.agentId ? issueCommand(inner, personId, { kind: 'end-work-hold', rigId }) : null;
   });
-  return commandId === null ? null : awaitOutcome(ctx, commandId);
+  return commandId === null ? undefined : awaitOutcome(ctx, commandId);
 }

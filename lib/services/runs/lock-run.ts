@@ -4,10 +4,11 @@ import { runs } from '@/db/schema/runs';
 import { EllwandError } from '@/lib/errors';
 import type { ServiceContext } from '../context';
 import { lockRig } from '../rigs/lock-rig';
+import { runColumns, type RunRow } from './run-columns';
 
 export interface LockedRun {
   rig: typeof rigs.$inferSelect;
-  run: typeof runs.$inferSelect;
+  run: RunRow;
 }
 
 /**
@@ -18,7 +19,7 @@ export async function lockRun(ctx: ServiceContext, runId: string): Promise<Locke
   const [found] = await ctx.db.select({ rigId: runs.rigId }).from(runs).where(eq(runs.id, runId));
   if (!found) throw new EllwandError('not-found');
   const rig = await lockRig(ctx, found.rigId);
-  const [run] = await ctx.db.select().from(runs).where(eq(runs.id, runId)).for('update');
+  const [run] = await ctx.db.select(runColumns).from(runs).where(eq(runs.id, runId)).for('update');
   if (!run) throw new EllwandError('not-found');
   return { rig, run };
 }

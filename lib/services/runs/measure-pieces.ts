@@ -12,8 +12,8 @@ import { tell } from '../tell';
 import { inTransaction } from '../transaction';
 import { newestMeasurements } from './first-pieces-failed';
 import { lockRun } from './lock-run';
+import type { RunRow } from './run-columns';
 
-type RunRow = typeof runs.$inferSelect;
 interface Measured {
   piece: number;
   lengthMm: number;

@@ -13,8 +13,8 @@ import type { RigReport } from '@/lib/protocol/report';
 import type { PersonActor, ServiceContext } from '../context';
 import { notesInForce } from './acknowledge-notes';
 import type { LockedRun } from './lock-run';
+import type { RunRow } from './run-columns';
 
-type RunRow = typeof runs.$inferSelect;
 type RigRow = typeof rigs.$inferSelect;
 
 /** What decides, and what the command must vouch for; `conditions` is null where the notes are not acknowledged. */

@@ -7,11 +7,11 @@ import { endAlarms } from '../alarms/end-alarms';
 import { raiseAlarm } from '../alarms/raise-alarm';
 import type { ServiceContext } from '../context';
 import { freeLot } from '../runs/free-lot';
+import { runColumns, type RunRow } from '../runs/run-columns';
 import { stepLot } from '../runs/step-lot';
 import { tell } from '../tell';
 import { applyWorkHold } from './apply-work-hold';
 
-type RunRow = typeof runs.$inferSelect;
 type RunEvent = Extract<EventBody, { runId: string }>;
 
 const iso = (moment: Date | null) => moment?.toISOString() ?? null;
@@ -72,7 +72,7 @@ async function noteMisfeed(ctx: ServiceContext, event: Extract<RunEvent, { kind:
 
 /** One event of a run that is on that rig: the run's step, its lot's, its alarms. */
 async function applyRunEvent(ctx: ServiceContext, event: RunEvent, at: string): Promise<void> {
-  const [run] = await ctx.db.select().from(runs).where(eq(runs.id, event.runId)).for('update');
+  const [run] = await ctx.db.select(runColumns).from(runs).where(eq(runs.id, event.runId)).for('update');
   if (!run || run.rigId !== event.rigId) return;
   const before = foldable(run);
   const folded = foldRunEvent(before, event, at);
