@@ -1,5 +1,6 @@
 import { createHash } from 'node:crypto';
 import { join, resolve } from 'node:path';
+import { freePorts } from './ports.mjs';
 import { repo } from './repo.mjs';
 import { Trouble } from './trouble.mjs';
 
@@ -57,6 +58,18 @@ function readPort(setting, text, byDefault) {
   const port = Number(text);
   if (/^\d{1,5}$/.test(text) && port >= 1 && port <= 65_535) return port;
   throw new Trouble(`${setting}="${text}" is no port: give a whole number from 1 to 65535.`);
+}
+
+/**
+ * Settings of a house that nobody else knows: free ports on 127.0.0.1 and the build that tests share.
+ * @param {string} dataDir @param {{demo: boolean, durable: boolean}} options @returns {Promise<Settings>}
+ */
+export async function ownSettings(dataDir, options) {
+  const [port, dbPort, redisPort, mailPort] = await freePorts(4);
+  if (!port || !dbPort || !redisPort || !mailPort) throw new Error('No ports were given');
+  const publicUrl = `http://127.0.0.1:${port}`;
+  const ports = { port, dbPort, redisPort, mailPort };
+  return { dataDir, host: '127.0.0.1', ...ports, nextDist: TEST_NEXT_DIST, publicUrl, ...options };
 }
 
 /** All tests of one checkout share a build: it knows nothing of the instance that serves it. */

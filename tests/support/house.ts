@@ -3,8 +3,7 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { readDemoAccounts } from '@/scripts/house/demo.mjs';
 import { startHouse } from '@/scripts/house/house.mjs';
-import { freePorts } from '@/scripts/house/ports.mjs';
-import { TEST_NEXT_DIST } from '@/scripts/house/settings.mjs';
+import { ownSettings } from '@/scripts/house/settings.mjs';
 
 type House = Awaited<ReturnType<typeof startHouse>>;
 
@@ -35,7 +34,7 @@ export async function startTestHouse({ demo }: { demo: boolean }): Promise<TestH
   const said: string[] = [];
   const log = (name: string) => readLog(dataDir, name);
   try {
-    const settings = await settingsFor(dataDir, demo);
+    const settings = await ownSettings(dataDir, { demo, durable: false });
     const house = await startHouse({ settings, say: (sentence) => said.push(sentence) });
     return {
       url: house.url,
@@ -54,14 +53,6 @@ export async function startTestHouse({ demo }: { demo: boolean }): Promise<TestH
     rmSync(dataDir, { recursive: true, force: true });
     throw new Error(`The house did not come up.\n${[...said, ...logs].join('\n')}`, { cause: error });
   }
-}
-
-async function settingsFor(dataDir: string, demo: boolean) {
-  const [port, dbPort, redisPort, mailPort] = await freePorts(4);
-  if (!port || !dbPort || !redisPort || !mailPort) throw new Error('No ports were given');
-  const publicUrl = `http://127.0.0.1:${port}`;
-  const ports = { port, dbPort, redisPort, mailPort };
-  return { dataDir, host: '127.0.0.1', ...ports, demo, nextDist: TEST_NEXT_DIST, publicUrl, durable: false };
 }
 
 function readLog(dataDir: string, name: string): string {
