@@ -74,19 +74,27 @@ function startRun(turn: Turn, { personId, id }: MovingCommand): void {
   beginHoming(turn, true);
 }
 
-function goOn(turn: Turn, { personId, id }: MovingCommand): void {
+function goOn(
+  turn: Turn,
+  { personId, id, firstPiecesAgain }: Extract<MovingCommand, { kind: 'go-on' }>,
+): void {
   const { run, rigId } = turn.state;
   if (!run) return;
-  const measured = run.hold === 'first-pieces';
-  turn.setRun({ measureAt: measured ? null : run.measureAt, hold: null, refusal: null, stillSinceMs: null });
-  turn.event({ kind: 'run-went-on', rigId, runId: run.order.runId, personId, commandId: id });
-  if (run.mustHome && run.cut >= run.order.pieces) return finishRun(turn, 'complete');
+  const { runId, firstPieces, pieces } = run.order;
+  turn.setRun({ hold: null, refusal: null, stillSinceMs: null });
+  if (run.hold === 'first-pieces') turn.setRun({ measureAt: null });
+  turn.event({ kind: 'run-went-on', rigId, runId, personId, commandId: id });
+  if (firstPiecesAgain && firstPieces > 0) {
+    turn.setRun({ measureAt: run.cut + firstPieces });
+    turn.note({ note: 'measure-again', rigId, runId });
+  }
+  if (run.mustHome && run.cut >= pieces) return finishRun(turn, 'complete');
   if (run.mustHome) return beginHoming(turn, run.measureAgain);
   turn.setRun({ mode: 'moving' });
-  const { cursor } = run;
-  // Asked at the piece's end, the first pieces may be due right now.
-  const due = run.measureAt !== null && !measured && run.cut >= run.measureAt && run.cut < run.order.pieces;
-  if (due && cursor.part === 'piece' && cursor.index === 0) {
+  const { measureAt } = turn.state.run ?? run;
+  // Restarted right at the end of the last first piece: they are due now.
+  const due = measureAt !== null && run.cut >= measureAt && run.cut < pieces;
+  if (due && run.cursor.part === 'piece' && run.cursor.index === 0) {
     beginSettle(turn, { to: 'held', reason: 'first-pieces', note: '' });
   }
 }

@@ -20,6 +20,8 @@ export const journalNoteSchema = z.discriminatedUnion('note', [
   z.object({ note: z.literal('cut-void'), ...ofRun, piece }),
   /** The rig homes and trims before it moves on; with `measureAgain` its first pieces are measured again. */
   z.object({ note: z.literal('must-home'), ...ofRun, measureAgain: z.boolean() }),
+  /** A person found a first piece wrong: as many again are measured from here. */
+  z.object({ note: z.literal('measure-again'), ...ofRun }),
   /** Stopping was asked for; it ends when the rig stands still. */
   z.object({ note: z.literal('run-stopping'), ...ofRun, personId: z.uuid().nullable() }),
   z.object({ note: z.literal('tray-cleared'), ...ofRun }),

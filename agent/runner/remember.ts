@@ -84,6 +84,9 @@ function rememberNote(memory: Remembered, note: JournalNote): void {
     case 'must-home':
       Object.assign(run, { mustHome: true, measureAgain: note.measureAgain });
       return;
+    case 'measure-again':
+      run.measureFrom = run.cut;
+      return;
     case 'run-stopping':
       run.stop = { personId: note.personId };
       return;
