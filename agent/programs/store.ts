@@ -34,8 +34,8 @@ export async function openProgramStore(dataDir: string): Promise<ProgramStore> {
       if (!programIsWhole(run)) throw new EllwandError('program-refused', { details: { runId: run.runId } });
       await writeDurably(pathOf(run.runId), JSON.stringify(runProgramSchema.parse(run)));
     },
-    loadProgram: (runId) => load(pathOf(runId), runId),
-    dropProgram: (runId) => removeDurably(pathOf(runId)),
+    loadProgram: async (runId) => load(pathOf(runId), runId),
+    dropProgram: async (runId) => removeDurably(pathOf(runId)),
     async heldRunIds() {
       const names = await readdir(folder);
       return names.filter((name) => name.endsWith(SUFFIX)).map((name) => name.slice(0, -SUFFIX.length));

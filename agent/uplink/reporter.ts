@@ -40,6 +40,7 @@ export async function reportRigs(parts: Parts): Promise<void> {
 /** @returns ms to wait before the next one, 0 when all is well */
 async function sendReport(parts: Parts): Promise<number> {
   const { server, teller, skew, random } = parts;
+  parts.bell.hush();
   const body: Report = {
     protocol: 1,
     sentAt: server.clock.date().toISOString(),

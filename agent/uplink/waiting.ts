@@ -24,6 +24,11 @@ export class Bell {
     this.#wake?.();
   }
 
+  /** Forgets a ring: what it told of is being seen to. */
+  hush(): void {
+    this.#rung = false;
+  }
+
   /** Resolves when rung; with `clock` and `ms`, at the latest after that time. */
   async wait(limit?: { clock: Clock; ms: number }): Promise<void> {
     if (!this.#rung) {

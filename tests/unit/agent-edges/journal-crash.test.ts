@@ -68,7 +68,7 @@ describe('the journal after crashes', () => {
         }
         await rm(dir, { recursive: true });
       }),
-      { numRuns: 60 },
+      { numRuns: 30 },
     );
   }, 60_000);
 
