@@ -21,7 +21,7 @@ export function authoriseAgent(ctx: ServiceContext): AgentActor {
 }
 
 /** Work that only Ellwand itself does. @throws EllwandError `not-allowed` for anybody else. */
-export function authoriseSystem(ctx: ServiceContext): SystemActor {
+export function authoriseSystem(ctx: Pick<ServiceContext, 'actor'>): SystemActor {
   if (ctx.actor.kind !== 'system') throw new EllwandError('not-allowed');
   return ctx.actor;
 }

@@ -91,6 +91,13 @@ export const rooms = [
     noPackages: [QUEUE, SERIAL],
   },
   {
+    name: 'lib/live',
+    files: ['lib/live/**'],
+    own: ['lib/live'],
+    knows: ['lib/auth', 'lib/services', 'lib/env', ...pure],
+    noPackages: [QUEUE, SERIAL, DATABASE, MAIL, FRAMEWORK],
+  },
+  {
     name: 'lib/jobs',
     files: ['lib/jobs/**'],
     own: ['lib/jobs'],

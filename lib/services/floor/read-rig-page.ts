@@ -9,7 +9,7 @@ import { authorise } from '../authorise';
 import type { ServiceContext } from '../context';
 import { parseInput } from '../parse';
 import { fullReadAt, notesInForce } from '../runs/acknowledge-notes';
-import { readRig } from './read-rigs';
+import { readRig } from './read-rig';
 
 const readRigPageSchema = z.object({ rigId: z.uuid() });
 

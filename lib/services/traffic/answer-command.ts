@@ -1,4 +1,5 @@
 import { and, eq, inArray } from 'drizzle-orm';
+import { z } from 'zod';
 import { commands } from '@/db/schema/traffic';
 import { EllwandError } from '@/lib/errors';
 import { commandAnswerSchema } from '@/lib/protocol/commands';
@@ -16,7 +17,7 @@ import { inTransaction } from '../transaction';
  */
 export async function answerCommand({
   ctx,
-  commandId,
+  commandId: id,
   input,
 }: {
   ctx: ServiceContext;
@@ -24,6 +25,7 @@ export async function answerCommand({
   input: unknown;
 }): Promise<void> {
   const { agentId } = authoriseAgent(ctx);
+  const commandId = parseInput(z.uuid(), id);
   const answer = parseInput(commandAnswerSchema, input);
   await inTransaction(ctx, async (inner) => {
     const mine = and(eq(commands.id, commandId), eq(commands.agentId, agentId));

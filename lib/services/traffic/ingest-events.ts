@@ -10,10 +10,10 @@ import {
 import { raiseAlarm } from '../alarms/raise-alarm';
 import { authoriseAgent } from '../authorise';
 import type { AgentActor, ServiceContext } from '../context';
-import { parseInput } from '../parse';
 import { tell } from '../tell';
 import { inTransaction } from '../transaction';
 import { applyEvents } from './apply-events';
+import { parseSpoken } from './parse-spoken';
 import { judgeReplay, requireOrder } from './refuse-events';
 import { storeEvents } from './store-events';
 import { keepSurplus } from './surplus';
@@ -72,7 +72,7 @@ export async function ingestEvents({
   input: unknown;
 }): Promise<EventUploadAnswer> {
   const actor = authoriseAgent(ctx);
-  const upload = parseInput(eventUploadSchema, input);
+  const upload = parseSpoken(eventUploadSchema, input);
   requireOrder(upload.events);
   const events = someOf(upload.events);
   if (!events) throw new EllwandError('bad-input');

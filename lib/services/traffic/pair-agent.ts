@@ -4,9 +4,9 @@ import { EllwandError } from '@/lib/errors';
 import { type PairingAnswer, pairingSchema } from '@/lib/protocol/pairing';
 import { audit } from '../audit';
 import type { ServiceContext } from '../context';
-import { parseInput } from '../parse';
 import { tell } from '../tell';
 import { inTransaction } from '../transaction';
+import { parseSpoken } from './parse-spoken';
 import { hashSecret, hashesMatch, newToken, plainCode } from './secrets';
 
 /**
@@ -20,7 +20,7 @@ export async function pairAgent({
   ctx: ServiceContext;
   input: unknown;
 }): Promise<PairingAnswer> {
-  const { code, software } = parseInput(pairingSchema, input);
+  const { code, software } = parseSpoken(pairingSchema, input);
   const codeHash = hashSecret(plainCode(code));
   const token = newToken();
   return inTransaction(ctx, async (inner) => {

@@ -1,10 +1,14 @@
 import { and, eq } from 'drizzle-orm';
+import { z } from 'zod';
 import { profiles, rigs } from '@/db/schema/rigs';
 import { runs } from '@/db/schema/runs';
 import { EllwandError } from '@/lib/errors';
 import type { RunProgram } from '@/lib/protocol/pairing';
 import { authoriseAgent } from '../authorise';
 import type { ServiceContext } from '../context';
+import { parseInput } from '../parse';
+
+const readRunProgramSchema = z.object({ runId: z.uuid() });
 
 /**
  * All that an agent needs to cut a run without the server.
@@ -12,12 +16,13 @@ import type { ServiceContext } from '../context';
  */
 export async function readRunProgram({
   ctx,
-  runId,
+  input,
 }: {
   ctx: ServiceContext;
-  runId: string;
+  input: unknown;
 }): Promise<RunProgram> {
   const { agentId } = authoriseAgent(ctx);
+  const { runId } = parseInput(readRunProgramSchema, input);
   const [found] = await ctx.db
     .select({ run: runs, profile: profiles })
     .from(runs)

@@ -5,9 +5,9 @@ import { type Report, type ReportAnswer, reportSchema, type RigReport } from '@/
 import { authoriseAgent } from '../authorise';
 import type { AgentActor, ServiceContext } from '../context';
 import { endAlarms } from '../alarms/end-alarms';
-import { parseInput } from '../parse';
 import { tell } from '../tell';
 import { inTransaction } from '../transaction';
+import { parseSpoken } from './parse-spoken';
 
 interface Stored extends Record<string, unknown> {
   rigId: string;
@@ -54,7 +54,7 @@ export async function recordReport({
   input: unknown;
 }): Promise<ReportAnswer> {
   const actor = authoriseAgent(ctx);
-  const report = parseInput(reportSchema, input);
+  const report = parseSpoken(reportSchema, input);
   const skewMs = ctx.now.getTime() - Date.parse(report.sentAt);
   await inTransaction(ctx, async (inner) => {
     const known = await store(inner, actor, report, skewMs);

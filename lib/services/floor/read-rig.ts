@@ -4,13 +4,7 @@ import { authorise } from '../authorise';
 import type { ServiceContext } from '../context';
 import { selectRigs } from './rig-rows';
 
-/** All rigs in bench order, to anyone signed in. */
-export async function listRigs({ ctx }: { ctx: ServiceContext }): Promise<RigDto[]> {
-  authorise(ctx, 'floor.read');
-  return selectRigs(ctx);
-}
-
-/** One rig. @throws EllwandError `not-found` */
+/** One rig as the floor shows it. @throws EllwandError `not-found` */
 export async function readRig({ ctx, rigId }: { ctx: ServiceContext; rigId: string }): Promise<RigDto> {
   authorise(ctx, 'floor.read');
   const [rig] = await selectRigs(ctx, [rigId]);

@@ -1,0 +1,20 @@
+import { z } from 'zod';
+import { EllwandError } from '@/lib/errors';
+import { PROTOCOL_VERSION } from '@/lib/protocol/version';
+import { parseInput } from '../parse';
+
+const versioned = z.object({ protocol: z.number() });
+
+/**
+ * Parses what an agent sent; another version of the protocol is told as that, and not as a wrong field.
+ * @throws EllwandError `protocol-unknown`, else as `parseInput`
+ */
+export function parseSpoken<Schema extends z.ZodType>(schema: Schema, input: unknown): z.output<Schema> {
+  const spoken = versioned.safeParse(input);
+  if (spoken.success && spoken.data.protocol !== PROTOCOL_VERSION) {
+    throw new EllwandError('protocol-unknown', {
+      details: { spoken: PROTOCOL_VERSION, heard: spoken.data.protocol },
+    });
+  }
+  return parseInput(schema, input);
+}
