@@ -38,7 +38,8 @@ export interface VirtualRig {
 /** Makes a virtual rig that lives in this process, by the real clock. Nothing happens before `start`. */
 export function createVirtualRig(options: VirtualRigOptions): VirtualRig {
   const settings = rigSettingsSchema.parse(options);
-  const startedAt = performance.timeOrigin + performance.now();
+  // The rig was switched on a boot ago: whoever opens it now finds it awake.
+  const startedAt = performance.timeOrigin + performance.now() - settings.firmware.bootMs / settings.speed;
   const wallAt = (mechanicalMs: number) => startedAt + mechanicalMs / settings.speed;
   const mechanicalNow = () => (performance.timeOrigin + performance.now() - startedAt) * settings.speed;
   let tallyFile: TallyFile | undefined;
@@ -111,7 +112,8 @@ export function createVirtualRig(options: VirtualRigOptions): VirtualRig {
       running = true;
       if (options.tally !== undefined) tallyFile = openTally(options.tally);
       if (options.control !== undefined) controlSocket = await openControl(options.control, carryOut);
-      act(() => core.switchOn());
+      core.switchOn();
+      act(() => undefined);
       await pty.plug();
     },
     control: (request) => carryOut(controlRequestSchema.parse(request)),

@@ -120,13 +120,13 @@ export class Firmware {
     this.mechanics.heater.targetC = 0;
     this.receiver.clear(true);
     this.executor.clear();
+    if (this.memory.displayText !== '') this.show('');
     this.memory = freshMemory(this.settings);
     this.position = new Position(this.settings);
     Object.assign(this.speedMmS, this.settings.speedMmS);
     Object.assign(this.accelerationMmS2, this.settings.accelerationMmS2);
     Object.assign(this.stepsPerMm, this.settings.stepsPerMm);
     Object.assign(this.stepper.presentMm, allAxes(0));
-    this.sinks.display('');
     this.state = 'off';
   }
 
