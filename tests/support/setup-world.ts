@@ -1,4 +1,5 @@
 import { drizzle } from 'drizzle-orm/node-postgres';
+import type { Database } from '@/db/client';
 import type { Role } from '@/lib/fleet/rights';
 import type { PersonActor, ServiceContext } from '@/lib/services/context';
 import { addPerson } from '@/lib/services/people/add-person';
@@ -9,7 +10,7 @@ export const PASSWORD = 'twelve brass posts';
 export const NOW = new Date('2026-12-01T08:00:00Z');
 
 export interface World {
-  db: ReturnType<typeof drizzle>;
+  db: Database;
   url: string;
   query: <Row extends object>(sql: string, values?: unknown[]) => Promise<Row[]>;
   /** The context of a person with exactly these roles, made when first asked for. */
