@@ -17,6 +17,7 @@ const DOING_WORDS: Record<BusyDoing, string> = {
   paused: 'is paused in another lot',
   held: 'is held with a question in another lot',
   'work hold': 'somebody works on it',
+  unsettled: 'its agent still holds earlier work',
   silent: 'is not heard',
   'out of service': 'is out of service',
 };

@@ -6,6 +6,7 @@ export const BUSY_DOINGS = [
   'paused',
   'held',
   'work hold',
+  'unsettled',
   'silent',
   'out of service',
 ] as const;
