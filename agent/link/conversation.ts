@@ -61,9 +61,11 @@ export function createConversation(port: Port, clock: Clock, onReply: (reply: Re
   const watch = (flight: InFlight) => {
     flight.calmDown();
     const leftMs = Math.max(0, flight.exchange.deadlineMs - clock.nowMs());
-    flight.calmDown = clock.after(leftMs, () =>
-      follow(flight, stepExchange(flight.exchange, { type: 'deadline', nowMs: clock.nowMs() })),
-    );
+    flight.calmDown = clock.after(leftMs, () => {
+      // A timer may fire a fraction of a millisecond early; the deadline has passed all the same.
+      const nowMs = Math.max(clock.nowMs(), flight.exchange.deadlineMs);
+      follow(flight, stepExchange(flight.exchange, { type: 'deadline', nowMs }));
+    });
   };
 
   port.onData((text) => {
