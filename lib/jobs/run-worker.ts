@@ -43,6 +43,7 @@ export async function runWorker(
   log: (what: string, cause: unknown) => void,
 ): Promise<void> {
   const services = openServices(settings.databaseUrl, {
+    now: () => new Date(),
     requestId: () => `worker-${randomBytes(6).toString('hex')}`,
     onError: (cause) => log('database', cause),
   });

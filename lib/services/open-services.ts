@@ -10,12 +10,12 @@ export interface OpenServices {
 /** Opens the database for a process without people. `requestId` names each context; `onError` hears of lost connections. */
 export function openServices(
   databaseUrl: string,
-  options: { requestId: () => string; onError: (cause: Error) => void },
+  options: { now: () => Date; requestId: () => string; onError: (cause: Error) => void },
 ): OpenServices {
   const { db, pool } = openDatabase(databaseUrl, { connectionsMax: 6 });
   pool.on('error', options.onError);
   return {
-    context: () => ({ actor: { kind: 'system' }, db, now: new Date(), requestId: options.requestId() }),
+    context: () => ({ actor: { kind: 'system' }, db, now: options.now(), requestId: options.requestId() }),
     close: () => pool.end(),
   };
 }
