@@ -6,6 +6,7 @@ import type { AgentEvent, EventBody } from '@/lib/protocol/events';
 import { endAlarms } from '../alarms/end-alarms';
 import { raiseAlarm } from '../alarms/raise-alarm';
 import type { ServiceContext } from '../context';
+import { knownPerson } from '../people/known-person';
 import { freeLot } from '../runs/free-lot';
 import { runColumns, type RunRow } from '../runs/run-columns';
 import { stepLot } from '../runs/step-lot';
@@ -40,6 +41,7 @@ async function keep(ctx: ServiceContext, runId: string, run: FoldedRun): Promise
       stateSince: new Date(run.stateSince),
       programHeldAt: dated(run.programHeldAt),
       startedAt: dated(run.startedAt),
+      startedBy: knownPerson(run.startedBy),
       endedAt: dated(run.endedAt),
     })
     .where(eq(runs.id, runId));
@@ -65,7 +67,7 @@ async function noteMisfeed(ctx: ServiceContext, event: Extract<RunEvent, { kind:
     piece: event.piece,
     cause: event.cause,
     foundBy: event.foundBy,
-    personId: event.personId,
+    personId: knownPerson(event.personId),
     at: new Date(at),
   });
 }

@@ -65,7 +65,7 @@ export async function storeEvents(
       from fresh where counted is not null or closings > 0 group by run_id, rig_id
     ), progressed as (
       update runs r set
-        cut = greatest(r.cut, least(r.pieces, p.counted)),
+        cut = greatest(r.cut, least(r.pieces, coalesce(p.counted, 0))),
         trims = r.trims + p.trims,
         wire_used_mm = r.wire_used_mm + p.wire_mm,
         last_piece_at = greatest(r.last_piece_at, p.closed_at)
