@@ -14,7 +14,7 @@ import { makePairingCode, PAIRING_VALID_MS } from './pairing-code';
  * `validMs` is longer than usual only where no person carries the code (the demo).
  * @throws EllwandError `already-exists` for a name that is taken, `rig-busy` when a rig has a run.
  */
-export function addAgent({
+export async function addAgent({
   ctx,
   input,
   validMs = PAIRING_VALID_MS,

@@ -8,7 +8,7 @@ import { bindTo } from './bind';
 import { lockAgent } from './lock-agent';
 
 /** Says which rigs an agent serves; it hears of it at once. @throws EllwandError `rig-busy` when a changed rig has a run. */
-export function bindRigs({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
+export async function bindRigs({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
   const actor = authorise(ctx, 'agents.write');
   const { agentId, rigIds } = parseInput(bindRigsSchema, input);
   return inTransaction({ ...ctx, actor }, async (inner) => {

@@ -10,7 +10,7 @@ import { lockAgent } from './lock-agent';
 import { makePairingCode, PAIRING_VALID_MS } from './pairing-code';
 
 /** A new code for an agent that lost its token or was revoked. A token in use stays good until the code is used. */
-export function renewPairingCode({
+export async function renewPairingCode({
   ctx,
   input,
 }: {

@@ -10,7 +10,7 @@ import { inTransaction } from '../transaction';
 import { lockAgent } from './lock-agent';
 
 /** Takes an agent's token and code away: refused from the next request on, its open stream ends with the news. */
-export function revokeAgent({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
+export async function revokeAgent({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
   authorise(ctx, 'agents.write');
   const { agentId } = parseInput(agentIdSchema, input);
   return inTransaction(ctx, async (inner) => {

@@ -10,7 +10,7 @@ import { inTransaction } from '../transaction';
 import { bladeDto } from './blade-dto';
 
 /** Adds a spare blade. @throws EllwandError `already-exists` for a label that is taken. */
-export function addBlade({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<BladeDto> {
+export async function addBlade({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<BladeDto> {
   authorise(ctx, 'blades.write');
   const blade = parseInput(addBladeSchema, input);
   return inTransaction(ctx, async (inner) => {

@@ -16,7 +16,7 @@ import { inTransaction } from '../transaction';
  * @throws EllwandError `rig-busy` while a run is cutting, `illegal-step` when the rig has a blade, `not-found` when
  * the blade is no spare one.
  */
-export function fitBlade({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
+export async function fitBlade({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
   const { personId } = authorise(ctx, 'blades.write');
   const { bladeId, rigId } = parseInput(fitBladeSchema, input);
   return inTransaction(ctx, async (inner) => {

@@ -15,7 +15,7 @@ import { inTransaction } from '../transaction';
  * Says that a blade was taken out of its rig, and why. It does not come back.
  * @throws EllwandError `rig-busy` while a run is cutting, `not-found` when the blade is in no rig.
  */
-export function removeBlade({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
+export async function removeBlade({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
   const { personId } = authorise(ctx, 'blades.write');
   const { bladeId, reason } = parseInput(removeBladeSchema, input);
   const isFitted = and(eq(blades.id, bladeId), isNotNull(blades.rigId), isNull(blades.removedAt));

@@ -13,7 +13,7 @@ import { lockPerson, refuseLastOwner } from './lock-person';
  * Gives a person other roles, from their next request on.
  * @throws EllwandError `illegal-step` when the last owner would lose the role.
  */
-export function changeRoles({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
+export async function changeRoles({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
   authorise(ctx, 'people.write');
   const { personId, roles } = parseInput(changeRolesSchema, input);
   return inTransaction(ctx, async (inner) => {

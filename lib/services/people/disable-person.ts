@@ -16,7 +16,7 @@ import { lockPerson, refuseLastOwner } from './lock-person';
  * asked of rigs and no agent has got yet is taken back.
  * @throws EllwandError `illegal-step` for the last owner, and for somebody who is disabled already.
  */
-export function disablePerson({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
+export async function disablePerson({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
   authorise(ctx, 'people.write');
   const { personId } = parseInput(personIdSchema, input);
   return inTransaction(ctx, async (inner) => {

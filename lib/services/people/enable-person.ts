@@ -10,7 +10,7 @@ import { inTransaction } from '../transaction';
 import { lockPerson } from './lock-person';
 
 /** Lets a disabled person sign in again; sessions from before stay over. @throws EllwandError `illegal-step` */
-export function enablePerson({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
+export async function enablePerson({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
   authorise(ctx, 'people.write');
   const { personId } = parseInput(personIdSchema, input);
   return inTransaction(ctx, async (inner) => {

@@ -9,7 +9,13 @@ import { tell } from '../tell';
 import { inTransaction } from '../transaction';
 
 /** Adds a rig; it can cut once it has a profile, notes, an agent and a spool. @throws EllwandError `already-exists` */
-export function addRig({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<{ id: string }> {
+export async function addRig({
+  ctx,
+  input,
+}: {
+  ctx: ServiceContext;
+  input: unknown;
+}): Promise<{ id: string }> {
   authorise(ctx, 'rigs.write');
   const rig = parseInput(addRigSchema, input);
   return inTransaction(ctx, async (inner) => {

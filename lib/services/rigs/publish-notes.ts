@@ -10,7 +10,7 @@ import { inTransaction } from '../transaction';
 import { lockRig } from './lock-rig';
 
 /** Puts new interlock notes in force as their next version; everybody reads them in full before their next start. */
-export function publishNotes({
+export async function publishNotes({
   ctx,
   input,
 }: {

@@ -15,7 +15,7 @@ import { requireStandstill } from './require-standstill';
  * Puts new numbers of a rig in force as its next version.
  * @throws EllwandError `rig-busy` while a run is under way: it ends with the numbers it began with.
  */
-export function publishProfile({
+export async function publishProfile({
   ctx,
   input,
 }: {

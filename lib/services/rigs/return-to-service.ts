@@ -11,7 +11,13 @@ import { inTransaction } from '../transaction';
 import { lockRig } from './lock-rig';
 
 /** Brings a rig back into service. @throws EllwandError `illegal-step` when it was never out. */
-export function returnToService({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
+export async function returnToService({
+  ctx,
+  input,
+}: {
+  ctx: ServiceContext;
+  input: unknown;
+}): Promise<void> {
   authorise(ctx, 'rigs.service');
   const { rigId } = parseInput(rigIdSchema, input);
   return inTransaction(ctx, async (inner) => {

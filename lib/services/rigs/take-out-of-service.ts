@@ -15,7 +15,13 @@ import { requireStandstill } from './require-standstill';
  * Takes a rig out of service: it gets no lot and nothing starts on it.
  * @throws EllwandError `rig-busy` while a run is under way (stop it first), `illegal-step` when it is out already.
  */
-export function takeOutOfService({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
+export async function takeOutOfService({
+  ctx,
+  input,
+}: {
+  ctx: ServiceContext;
+  input: unknown;
+}): Promise<void> {
   const { personId } = authorise(ctx, 'rigs.service');
   const { rigId, reason } = parseInput(takeOutOfServiceSchema, input);
   return inTransaction(ctx, async (inner) => {

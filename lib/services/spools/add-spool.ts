@@ -11,7 +11,7 @@ import { inTransaction } from '../transaction';
 import { spoolDto } from './spool-dto';
 
 /** Adds a reel of a known wire. @throws EllwandError `already-exists` for a label that is taken. */
-export function addSpool({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<SpoolDto> {
+export async function addSpool({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<SpoolDto> {
   authorise(ctx, 'stock.write');
   const wanted = parseInput(addSpoolSchema, input);
   return inTransaction(ctx, async (inner) => {

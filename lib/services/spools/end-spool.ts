@@ -10,7 +10,7 @@ import { parseInput } from '../parse';
 import { inTransaction } from '../transaction';
 
 /** Says that a spool is empty or gone. @throws EllwandError `illegal-step` while it is on a rig. */
-export function endSpool({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
+export async function endSpool({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
   authorise(ctx, 'stock.write');
   const { spoolId } = parseInput(endSpoolSchema, input);
   return inTransaction(ctx, async (inner) => {

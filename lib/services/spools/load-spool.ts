@@ -16,7 +16,7 @@ import { inTransaction } from '../transaction';
  * Says which spool is on the rig, or that none is.
  * @throws EllwandError `rig-busy` while a run is cutting, `illegal-step` when the spool is on another rig or ended.
  */
-export function loadSpool({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
+export async function loadSpool({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
   authorise(ctx, 'rigs.load');
   const { rigId, spoolId } = parseInput(loadSpoolSchema, input);
   return inTransaction(ctx, async (inner) => {

@@ -11,7 +11,7 @@ import { inTransaction } from '../transaction';
 import { wireDto } from './wire-dto';
 
 /** Adds a kind of wire. @throws EllwandError `already-exists` when gauge, conductor, insulation and colour are known. */
-export function addWire({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<WireDto> {
+export async function addWire({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<WireDto> {
   authorise(ctx, 'wires.write');
   const wire = parseInput(addWireSchema, input);
   return inTransaction(ctx, async (inner) => {

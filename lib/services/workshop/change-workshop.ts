@@ -7,7 +7,7 @@ import { parseInput } from '../parse';
 import { inTransaction } from '../transaction';
 
 /** Replaces the workshop's settings. Lots that are queued already keep their size. */
-export function changeWorkshop({
+export async function changeWorkshop({
   ctx,
   input,
 }: {
