@@ -1,5 +1,5 @@
 import { randomUUID } from 'node:crypto';
-import { mkdtemp } from 'node:fs/promises';
+import { mkdtemp, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterEach } from 'vitest';
@@ -55,8 +55,10 @@ export async function openServer(): Promise<TestServer> {
   return server;
 }
 
-export function makeFolder(): Promise<string> {
-  return mkdtemp(join(tmpdir(), 'ellwand-uplink-'));
+export async function makeFolder(): Promise<string> {
+  const folder = await mkdtemp(join(tmpdir(), 'ellwand-uplink-'));
+  closers.push(() => rm(folder, { recursive: true, force: true }));
+  return folder;
 }
 
 export async function openJournalAt(dir: string): Promise<Journal<TestNote>> {

@@ -1,13 +1,14 @@
-import { mkdtemp, writeFile } from 'node:fs/promises';
+import { writeFile } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import fc from 'fast-check';
 import { ConfigError, loadConfig } from '@/agent/config';
 import { JsonProblem, parseLocatedJson } from '@/agent/config/located-json';
+import { makeFolder } from './journal-support';
 
 async function fileWith(text: string): Promise<string> {
-  const path = join(await mkdtemp(join(tmpdir(), 'ellwand-config-')), 'agent.json');
+  const path = join(await makeFolder(), 'agent.json');
   await writeFile(path, text);
   return path;
 }

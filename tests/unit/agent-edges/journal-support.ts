@@ -2,6 +2,7 @@ import { randomUUID } from 'node:crypto';
 import { cp, mkdtemp, readdir, rm, stat } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
+import { onTestFinished } from 'vitest';
 import { z } from 'zod';
 import type { Damage } from '@/agent/journal/damage';
 import { openJournal, type JournalOptions, type OpenedJournal } from '@/agent/journal/journal';
@@ -31,8 +32,11 @@ export function plain(history: readonly JournalRecord<TestNote>[]): string[] {
   });
 }
 
+/** A folder of its own, removed when the test has ended. */
 export async function makeFolder(): Promise<string> {
-  return mkdtemp(join(tmpdir(), 'ellwand-journal-'));
+  const folder = await mkdtemp(join(tmpdir(), 'ellwand-journal-'));
+  onTestFinished(() => rm(folder, { recursive: true, force: true }));
+  return folder;
 }
 
 export interface TestJournal extends OpenedJournal<TestNote> {
