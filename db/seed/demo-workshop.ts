@@ -6,6 +6,7 @@ import { addPerson } from '@/lib/services/people/add-person';
 import { createFirstOwner } from '@/lib/services/people/create-first-owner';
 import { addSpool } from '@/lib/services/spools/add-spool';
 import { addWire } from '@/lib/services/wires/add-wire';
+import { queueDemoBatches } from './demo-batches';
 import type { DemoContexts } from './demo-contexts';
 import { makeDemoRig } from './demo-rig';
 import { DEMO_PEOPLE, WORKSHOP_NAME } from './demo/people';
@@ -28,7 +29,9 @@ export async function makeDemoWorkshop(ctx: ServiceContext, password: string): P
     const spoolId = spoolIds[index] ?? null;
     rigIds.set(rig.name, await makeDemoRig(as, rig, { benchOrder: index + 1, spoolId }));
   }
-  return makeAgents(as, rigIds);
+  const codes = await makeAgents(as, rigIds);
+  await queueDemoBatches(as, wireIds);
+  return codes;
 }
 
 async function makePeople(ctx: ServiceContext, password: string): Promise<DemoContexts> {

@@ -39,9 +39,10 @@ describe('the demo', () => {
     expect(await seedDemo(db(), place, now)).toBe(false);
     const { rows } = await database.pool.query(
       `select (select count(*) from rigs)::int as rigs, (select count(*) from people)::int as people,
-              (select count(*) from agents)::int as agents`,
+              (select count(*) from agents)::int as agents,
+              (select sum(pieces) from lots where state = 'waiting')::int as pieces`,
     );
-    expect(rows).toEqual([{ rigs: 8, people: 4, agents: 2 }]);
+    expect(rows).toEqual([{ rigs: 8, people: 4, agents: 2, pieces: 2026 }]);
   });
 
   it('leaves accounts of all four roles that sign in, in a file only its owner reads', async () => {
