@@ -3,10 +3,16 @@
 import Link from 'next/link';
 import { wallClock } from '@/components/live/time';
 import { useLive } from '@/components/live/live-provider';
-import { needsOf } from '@/lib/fleet/needs';
+import { needsOf, type Need } from '@/lib/fleet/needs';
 import { floorSentence } from '@/lib/fleet/sentence';
 import { routes } from '@/lib/routes';
 import type { RigDto, WaitingDto } from '@/lib/schemas/floor';
+
+const MARKS: Record<Need['mark'], string> = {
+  danger: 'hatch-signal',
+  abnormal: 'hatch',
+  normal: 'border border-ink',
+};
 
 /** The floor's first lines: what is to be done, then who must go where with what in hand. */
 export function FloorHead({ rigs, waiting }: { rigs: RigDto[]; waiting: WaitingDto }) {
@@ -18,14 +24,14 @@ export function FloorHead({ rigs, waiting }: { rigs: RigDto[]; waiting: WaitingD
       <h1 className="text-[25px] leading-snug font-normal">
         <strong>{sentence.urgent}</strong> {sentence.rest}
       </h1>
-      <ul className="mt-2" aria-label="Who must go where">
+      <ul className={`mt-2 ${needs.length > 4 ? 'gap-x-8 lg:columns-2' : ''}`} aria-label="Who must go where">
         {needs.map((need) => (
-          <li key={need.rigId}>
+          <li key={need.rigId} className="break-inside-avoid">
             <Link
               href={routes.rig(need.rigId)}
               className="flex min-h-11 flex-wrap items-center gap-x-3 hover:underline"
             >
-              <span aria-hidden className={`h-4 w-6 shrink-0 ${need.urgent ? 'hatch-signal' : 'hatch'}`} />
+              <span aria-hidden className={`h-4 w-6 shrink-0 ${MARKS[need.mark]}`} />
               <span className="name">{need.rigName}</span>
               <span>{need.happened}</span>
               <span className="text-soft">{need.bring}</span>

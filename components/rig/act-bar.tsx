@@ -1,10 +1,17 @@
 import type { ReactNode } from 'react';
 import type { RunProblem } from '@/components/runs/use-run-action';
 
+interface ActBarProps {
+  children: ReactNode;
+  problem?: RunProblem | null;
+  /** A row above the acts, such as a keypad. */
+  above?: ReactNode;
+}
+
 /** The bar at the foot of a rig's page: what can be done now, and why it was refused. */
-export function ActBar({ children, problem }: { children: ReactNode; problem?: RunProblem | null }) {
+export function ActBar({ children, problem, above }: ActBarProps) {
   return (
-    <div className="sticky bottom-0 border-t-2 border-ink bg-sheet">
+    <div className="bleed sticky bottom-0 z-10 self-end border-t-2 border-ink bg-sheet lg:col-span-2">
       {problem ? (
         <p
           role="alert"
@@ -14,7 +21,8 @@ export function ActBar({ children, problem }: { children: ReactNode; problem?: R
           {problem.title}
         </p>
       ) : null}
-      <div className="page flex flex-wrap items-center justify-between gap-4 py-4">{children}</div>
+      {above ? <div className="page pt-3">{above}</div> : null}
+      <div className="page flex flex-wrap items-center justify-between gap-4 py-3">{children}</div>
     </div>
   );
 }

@@ -2,6 +2,7 @@
 
 import { useState, type ReactNode } from 'react';
 import { Button } from '@/components/ui/button';
+import { Keypad } from '@/components/ui/keypad';
 import { useRunAction } from '@/components/runs/use-run-action';
 import type { RigPageDto } from '@/lib/schemas/floor';
 import { ActBar } from './act-bar';
@@ -31,21 +32,24 @@ export function MoveBar({ page, verb, label, waitsFor, children }: MoveBarProps)
     await move.act({ runId: run.id, presenceCode: display ? code : null });
     setCode('');
   };
+  const above =
+    display && waitsFor === null ? (
+      <Keypad row label="Code" value={code} onChange={setCode} lengthMax={CODE_DIGITS} />
+    ) : null;
   return (
-    <ActBar problem={move.problem}>
-      {display ? <CodeEntry rig={rig} value={code} onChange={setCode} /> : <NoDisplay rig={rig} />}
-      <div className="grid gap-2">
-        {waitsFor ? <p className="font-bold">{waitsFor}</p> : null}
-        <p className="max-w-xs text-sm text-soft">
-          By pressing this you say that you stand at the rig and have read the notes. Local safety rules and
-          qualified people come first.
-        </p>
-        <div className="flex flex-wrap gap-3">
-          <Button look="ink" size="rig" disabled={!ready || move.busy} onClick={() => void go()}>
-            {move.busy ? 'Asking the rig' : label}
-          </Button>
-          {verb === 'goOn' ? <StopButton run={run} /> : null}
-        </div>
+    <ActBar problem={move.problem} above={above}>
+      {waitsFor !== null ? <p className="text-lg font-bold">{waitsFor}</p> : null}
+      {waitsFor === null && display ? <CodeEntry rig={rig} value={code} onChange={setCode} /> : null}
+      {waitsFor === null && !display ? <NoDisplay rig={rig} /> : null}
+      <p className="max-w-72 text-sm text-soft">
+        By pressing this you say that you stand at the rig and have read the notes. Local safety rules and
+        qualified people come first.
+      </p>
+      <div className="flex flex-wrap gap-3">
+        <Button look="ink" size="rig" disabled={!ready || move.busy} onClick={() => void go()}>
+          {move.busy ? 'Asking the rig' : label}
+        </Button>
+        {verb === 'goOn' ? <StopButton run={run} /> : null}
         {children}
       </div>
     </ActBar>

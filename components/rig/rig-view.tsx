@@ -40,16 +40,14 @@ export function RigView({ initial, personId, spools, load }: RigViewProps) {
       {state === 'blocked' ? (
         <Notice title="The guard is open. Nothing moves until it is shut and you go on here." danger />
       ) : null}
-      <div className="page grid grow content-start gap-x-10 gap-y-6 py-5 lg:grid-cols-[400px_1fr]">
+      <div className="page grid grow grid-rows-[1fr_auto] gap-x-10 gap-y-6 pt-5 lg:grid-cols-[400px_1fr]">
         <div className="grid content-start gap-6">
           <LotFacts rig={rig} />
           <Signals rig={rig} />
           {may('rigs.load') && quiet ? <LoadSpool rig={rig} spools={spools} load={load} /> : null}
           {may('rigs.hold') && !rig.workHold ? <WorkHoldButton rig={rig} /> : null}
         </div>
-        <div id="ask" className="contents">
-          <Panels page={page} state={state} />
-        </div>
+        <Panels page={page} state={state} />
       </div>
       <Log page={page} />
     </div>

@@ -16,32 +16,34 @@ interface KeypadProps {
   onChange: (value: string) => void;
   lengthMax: number;
   decimal?: boolean;
+  /** One row across the page instead of a block of three columns. */
+  row?: boolean;
   label: string;
 }
 
-/** Digits on the page, for gloves: keys of 64 px. */
-export function Keypad({ value, onChange, lengthMax, decimal = false, label }: KeypadProps) {
-  const press = (key: string) => () => onChange(typeKey(value, key, lengthMax));
+function Key({ name, label, onPress }: { name: string; label?: string; onPress: () => void }) {
   return (
-    <div role="group" aria-label={label} className="grid w-60 grid-cols-3 gap-2">
+    <Button size="rig" className="px-0" onClick={onPress} aria-label={label}>
+      <span aria-hidden={label ? true : undefined} className="figure text-2xl">
+        {name}
+      </span>
+    </Button>
+  );
+}
+
+/** Digits on the page, for gloves: keys of 64 px and more. */
+export function Keypad({ value, onChange, lengthMax, decimal = false, row = false, label }: KeypadProps) {
+  const press = (key: string) => () => onChange(typeKey(value, key, lengthMax));
+  const shape = row ? 'w-full grid-cols-[repeat(auto-fit,minmax(64px,1fr))]' : 'w-60 grid-cols-3';
+  return (
+    <div role="group" aria-label={label} className={`grid gap-2 ${shape}`}>
       {KEYS.map((key) => (
-        <Button key={key} size="rig" onClick={press(key)}>
-          <span className="figure text-2xl">{key}</span>
-        </Button>
+        <Key key={key} name={key} onPress={press(key)} />
       ))}
-      {decimal ? (
-        <Button size="rig" onClick={press('.')} aria-label="decimal point">
-          <span className="figure text-2xl">.</span>
-        </Button>
-      ) : (
-        <span />
-      )}
-      <Button size="rig" onClick={press('0')}>
-        <span className="figure text-2xl">0</span>
-      </Button>
-      <Button size="rig" onClick={press('back')} aria-label="delete the last digit">
-        <span aria-hidden>⌫</span>
-      </Button>
+      {decimal ? <Key name="." label="decimal point" onPress={press('.')} /> : null}
+      {!decimal && !row ? <span /> : null}
+      <Key name="0" onPress={press('0')} />
+      <Key name="⌫" label="delete the last digit" onPress={press('back')} />
     </div>
   );
 }

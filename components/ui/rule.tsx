@@ -16,7 +16,13 @@ export function Rule({ max, labelsMost = 5 }: { max: number; labelsMost?: number
             stroke="currentColor"
           />
           {tick.label ? (
-            <text x={`${tick.ratio * 100}%`} dx="3" y="14" className="figure fill-soft text-[12px]">
+            <text
+              x={`${tick.ratio * 100}%`}
+              dx={tick.ratio > 0.95 ? -3 : 3}
+              y="13"
+              textAnchor={tick.ratio > 0.95 ? 'end' : 'start'}
+              className="figure fill-soft text-[12px]"
+            >
               {tick.label}
             </text>
           ) : null}

@@ -1,13 +1,13 @@
 import type { RigDto } from '@/lib/schemas/floor';
 import { HOLD_WORDS } from './words';
 
-/** Who must go where, with what in hand. `urgent` is drawn in the signal colour. `rank` 1 comes first. */
+/** Who must go where, with what in hand. `mark` says how it is drawn: what is normal is not hatched. `rank` 1 comes first. */
 export interface Need {
   rigId: string;
   rigName: string;
   happened: string;
   bring: string;
-  urgent: boolean;
+  mark: 'danger' | 'abnormal' | 'normal';
   rank: number;
   sinceAt: string;
 }
@@ -24,7 +24,13 @@ function heldNeed(rig: RigDto): Wanted | null {
     run.holdReason === 'first-pieces'
       ? `${run.piecesToMeasure.length} pieces cut, measure them before the other ${run.pieces - run.cut}`
       : `${words.happened}${at}`;
-  return { happened, bring: words.bring, urgent, rank: urgent ? 1 : 2, sinceAt: run.stateSince };
+  return {
+    happened,
+    bring: words.bring,
+    mark: urgent ? 'danger' : 'abnormal',
+    rank: urgent ? 1 : 2,
+    sinceAt: run.stateSince,
+  };
 }
 
 function wantOf(rig: RigDto): Wanted | null {
@@ -34,7 +40,7 @@ function wantOf(rig: RigDto): Wanted | null {
         ? {
             happened: 'not heard; it may still be moving',
             bring: 'go and look',
-            urgent: true,
+            mark: 'danger',
             rank: 1,
             sinceAt: rig.heardAt,
           }
@@ -44,7 +50,7 @@ function wantOf(rig: RigDto): Wanted | null {
         ? {
             happened: 'the guard is open',
             bring: 'go and look; nothing moves until you say so at the rig',
-            urgent: true,
+            mark: 'danger',
             rank: 1,
             sinceAt: rig.run.stateSince,
           }
@@ -56,7 +62,7 @@ function wantOf(rig: RigDto): Wanted | null {
         ? {
             happened: `run over, ${rig.run.bagged} pieces in the tray`,
             bring: 'a bag and a label',
-            urgent: false,
+            mark: 'abnormal',
             rank: 3,
             sinceAt: rig.run.endedAt,
           }
@@ -66,7 +72,7 @@ function wantOf(rig: RigDto): Wanted | null {
         ? {
             happened: `paused at piece ${rig.run.cut}`,
             bring: 'go on at the rig',
-            urgent: false,
+            mark: 'normal',
             rank: 4,
             sinceAt: rig.run.stateSince,
           }
@@ -76,7 +82,7 @@ function wantOf(rig: RigDto): Wanted | null {
         ? {
             happened: `${rig.run.batchName}, lot ${rig.run.lotNumber} is ready to start`,
             bring: 'read the notes and start it',
-            urgent: false,
+            mark: 'normal',
             rank: 5,
             sinceAt: null,
           }

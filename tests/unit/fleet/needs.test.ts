@@ -41,7 +41,7 @@ describe('who must go where', () => {
 
   it('says of a silent rig that it may still be moving, only if it had something to do', () => {
     expect(needsOf([aRig({ state: 'silent' })])).toEqual([]);
-    expect(needsOf([aRig({ state: 'silent', run: aRun() })])[0]).toMatchObject({ urgent: true, rank: 1 });
+    expect(needsOf([aRig({ state: 'silent', run: aRun() })])[0]).toMatchObject({ mark: 'danger', rank: 1 });
   });
 });
 
