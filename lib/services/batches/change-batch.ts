@@ -21,7 +21,7 @@ import { lockLines } from './standing-lines';
  * @throws EllwandError `changed-meanwhile` when it is not the revision that was looked at, or a line of it is gone;
  * `illegal-step` when it is withdrawn; `bad-input` for what lines that are cut in part do not allow.
  */
-export function changeBatch({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
+export async function changeBatch({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
   authorise(ctx, 'batches.write');
   const { batchId, revision, lines, name, dueAt, priority } = parseInput(changeBatchSchema, input);
   return inTransaction(ctx, async (inner) => {

@@ -7,7 +7,7 @@ import { insertBatch } from './insert-batch';
 import { makeLots } from './make-lots';
 
 /** Makes a batch by hand, as a draft or queued at once. Answers its id. */
-export function createBatch({
+export async function createBatch({
   ctx,
   input,
 }: {

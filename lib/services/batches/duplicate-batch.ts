@@ -11,7 +11,7 @@ import { insertBatch } from './insert-batch';
 const NAME_CHARACTERS_MOST = 80;
 
 /** Makes a draft with the same lines and no due time, to be looked at before it is queued. Answers its id. */
-export function duplicateBatch({
+export async function duplicateBatch({
   ctx,
   input,
 }: {

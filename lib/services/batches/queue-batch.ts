@@ -8,7 +8,7 @@ import { lockBatch } from './lock-batch';
 import { makeLots } from './make-lots';
 
 /** Hands a draft to the rigs. @throws EllwandError `illegal-step` when it was queued or withdrawn already. */
-export function queueBatch({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
+export async function queueBatch({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<void> {
   authorise(ctx, 'batches.write');
   const { batchId } = parseInput(oneBatchSchema, input);
   return inTransaction(ctx, async (inner) => {

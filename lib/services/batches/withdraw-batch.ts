@@ -61,7 +61,13 @@ async function withdrawWaiting(ctx: ServiceContext, batchId: string): Promise<nu
  * up (law 4). Running ones finish and are counted. Answers what is cut and what still cuts.
  * @throws EllwandError `illegal-step` when it is withdrawn already.
  */
-export function withdrawBatch({ ctx, input }: { ctx: ServiceContext; input: unknown }): Promise<Withdrawal> {
+export async function withdrawBatch({
+  ctx,
+  input,
+}: {
+  ctx: ServiceContext;
+  input: unknown;
+}): Promise<Withdrawal> {
   const actor = authorise(ctx, 'batches.write');
   const { batchId } = parseInput(oneBatchSchema, input);
   return inTransaction({ ...ctx, actor }, async (inner) => {
