@@ -1,6 +1,7 @@
 import type { PositionReport } from '@/agent/dialect/position';
 import type { Reply } from '@/agent/dialect/reply';
 import { pieceLengthMm } from './measures';
+import { stepsOf, type Cursor, type Run } from './state';
 import type { Turn } from './turn';
 
 /** A line's answer: `sure` is false when the firmware has the line and what it answered may be lost. */
@@ -33,4 +34,17 @@ export function countPiece(turn: Turn, piece: number): void {
     wireMm: pieceLengthMm(run),
     jawsClosedAt: new Date(run.jawsClosedMs ?? turn.nowMs).toISOString(),
   });
+}
+
+/** Whether the jaws were sent on the trim and the motion that shuts them is not known to have ended. */
+export function isTrimCut({ program }: Run, cursor: Cursor): boolean {
+  if (cursor.part !== 'trim') return false;
+  return stepsOf(program, cursor)[cursor.index - 1]?.kind === 'cut';
+}
+
+/** The trim's wire is charged when the motion that cut it has ended. */
+export function noteTrim(turn: Turn): void {
+  const { run, rigId, profile } = turn.state;
+  if (!run) return;
+  turn.event({ kind: 'trim-cut', rigId, runId: run.order.runId, wireMm: profile.feed.trimMm });
 }

@@ -1,5 +1,5 @@
 import type { PositionReport } from '@/agent/dialect/position';
-import { countPiece, positionIn, shows, type Answered } from './counting';
+import { countPiece, isTrimCut, noteTrim, positionIn, shows, type Answered } from './counting';
 import { doubtOrHold, requireHome, settled, voidOpenCut } from './holding';
 import { registerStep } from './next-line';
 import { whereStands } from './standing';
@@ -29,7 +29,10 @@ export function onSettle(turn: Turn, stage: SettleStage, answered: Answered): vo
 function motionEnded(turn: Turn, active: boolean): void {
   const { run } = turn.state;
   if (!active || !run) return settled(turn);
-  if (run.mode === 'moving' || run.mode === 'settling') turn.setRun({ jawsClosedMs: turn.nowMs });
+  if (run.mode === 'settling') {
+    turn.setRun({ jawsClosedMs: turn.nowMs });
+    if (isTrimCut(run, run.cursor)) noteTrim(turn);
+  }
   turn.set({ settle: 'ask' });
 }
 

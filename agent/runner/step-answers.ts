@@ -1,7 +1,7 @@
 import type { PositionReport } from '@/agent/dialect/position';
 import type { HoldReason, MisfeedCause } from '@/lib/fleet/run';
 import type { ProgramStep } from '@/lib/program/steps';
-import { countPiece, positionIn, shows, type Answered } from './counting';
+import { countPiece, isTrimCut, noteTrim, positionIn, shows, type Answered } from './counting';
 import { beginSettle, requireHome, voidOpenCut } from './holding';
 import { atCut, atStandby, fedWhole } from './standing';
 import { stepsOf, type Cursor } from './state';
@@ -40,7 +40,7 @@ export function onStep(turn: Turn, cursor: Cursor, step: ProgramStep, answered: 
     // Taken is not done: only the ok of M400 says that motion has ended.
     if (!answered.sure) return;
     turn.setRun({ jawsClosedMs: turn.nowMs });
-    noteTrim(turn, cursor);
+    if (isTrimCut(run, cursor)) noteTrim(turn);
   }
   if (step.kind === 'ask' && !onAsk(turn, cursor, answered)) return;
   if (step.kind === 'register') {
@@ -49,16 +49,8 @@ export function onStep(turn: Turn, cursor: Cursor, step: ProgramStep, answered: 
     onRegister(turn, cursor, step.piece);
   }
   if (turn.state.run?.mode === 'moving') advance(turn, cursor);
-}
-
-/** The trim's wire is charged when the motion that cut it has ended. */
-function noteTrim(turn: Turn, cursor: Cursor): void {
-  const { run, rigId, profile } = turn.state;
-  if (!run || cursor.part !== 'trim') return;
-  const steps = stepsOf(run.program, cursor);
-  const first = steps.findIndex((step) => step.kind === 'await');
-  if (cursor.index !== first) return;
-  turn.event({ kind: 'trim-cut', rigId, runId: run.order.runId, wireMm: profile.feed.trimMm });
+  // A trim that is broken off is not gone on with, but whether its cut was made is charged.
+  else if (cursor.part === 'trim') turn.setRun({ cursor: { ...cursor, index: cursor.index + 1 } });
 }
 
 /** Whether the rig is where it must be; if not, the run is held. False also when it is to be asked again. */
