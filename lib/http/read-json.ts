@@ -1,4 +1,5 @@
 import { EllwandError } from '@/lib/errors';
+import { readBytes } from './read-bytes';
 
 const BYTES_MAX = 1_000_000;
 
@@ -17,12 +18,5 @@ export async function readJson(request: Request, bytesMax = BYTES_MAX): Promise<
 
 /** The body as text, read no further than `bytesMax`. @throws EllwandError `file-too-large` */
 export async function readText(request: Request, bytesMax = BYTES_MAX): Promise<string> {
-  const chunks: Uint8Array[] = [];
-  let bytes = 0;
-  for await (const chunk of request.body ?? []) {
-    bytes += chunk.byteLength;
-    if (bytes > bytesMax) throw new EllwandError('file-too-large');
-    chunks.push(chunk);
-  }
-  return Buffer.concat(chunks).toString('utf8');
+  return Buffer.from(await readBytes(request, bytesMax)).toString('utf8');
 }
