@@ -19,6 +19,8 @@ function parse(text: string): LiveMessage | null {
 
 /** Keeps one event stream open and opens it anew when it ends or falls silent, until `signal` aborts. */
 function holdStream(onText: (text: string) => void, signal: AbortSignal): Promise<void> {
+  // The lock may be granted just after its page gave up; it must be let go at once for the next one.
+  if (signal.aborted) return Promise.resolve();
   return new Promise((resolve) => {
     let source: EventSource | null = null;
     let watchdog: ReturnType<typeof setTimeout> | undefined;
