@@ -26,6 +26,8 @@ import { Trouble, printTrouble } from './house/trouble.mjs';
 const ENDING = '.bench.ts';
 /** These need none of the house's services. */
 const WITHOUT_HOUSE = ['agent-time'];
+/** A build of their own: tests that run meanwhile keep theirs. */
+const NEXT_DIST = '.next/bench';
 const say = console.log;
 const stopping = new AbortController();
 const { signal } = stopping;
@@ -75,7 +77,7 @@ async function measure(name, args, resultDir) {
 
 /** @param {string} dataDir @param {(env: Record<string, string>) => Promise<unknown>} run */
 async function inHouse(dataDir, run) {
-  const settings = await ownSettings(dataDir, { demo: true, durable: true });
+  const settings = { ...(await ownSettings(dataDir, { demo: true, durable: true })), nextDist: NEXT_DIST };
   const house = await startHouse({ settings, say, signal });
   try {
     await run(house.env);

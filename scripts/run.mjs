@@ -5,6 +5,7 @@
 import { resolve } from 'node:path';
 import { pathToFileURL } from 'node:url';
 import { bundleEntry } from './house/bundle.mjs';
+import { printTrouble } from './house/trouble.mjs';
 
 const [entry, ...rest] = process.argv.slice(2);
 if (!entry) {
@@ -13,7 +14,10 @@ if (!entry) {
 }
 
 const path = resolve(entry);
-const bundle = await bundleEntry(path);
+const bundle = await bundleEntry(path).catch((/** @type {unknown} */ error) => {
+  printTrouble(error);
+  process.exit(1);
+});
 process.argv = [process.argv[0] ?? 'node', path, ...(rest[0] === '--' ? rest.slice(1) : rest)];
 process.setSourceMapsEnabled(true);
 await import(pathToFileURL(bundle).href);

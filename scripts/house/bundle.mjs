@@ -1,8 +1,10 @@
 /** Bundles of TypeScript entries, kept below node_modules/.cache and made anew when a source changed. */
+import { spawnSync } from 'node:child_process';
 import { createHash } from 'node:crypto';
 import { mkdir, readFile, readdir, rename, rm, stat, writeFile } from 'node:fs/promises';
 import { basename, dirname, join, relative, resolve } from 'node:path';
 import { repo } from './repo.mjs';
+import { Trouble } from './trouble.mjs';
 
 const cacheDir = join(repo, 'node_modules', '.cache', 'ellwand');
 /** Part of every hash: raise it when the options below change. */
@@ -25,7 +27,20 @@ export async function bundleEntry(entry) {
   const name = nameOf(entry);
   const manifest = await readManifest(name);
   if (manifest && (await isFresh(manifest))) return join(cacheDir, manifest.bundle);
-  return build(entry, name);
+  buildApart(entry);
+  const made = await readManifest(name);
+  if (!made) throw new Trouble(`${entry} left no bundle`);
+  return join(cacheDir, made.bundle);
+}
+
+/**
+ * In a process of its own: the compiler and its service would stay in this one, which may run for days.
+ * @param {string} entry
+ */
+function buildApart(entry) {
+  const builder = join(repo, 'scripts', 'house', 'build-bundle.mjs');
+  const { status, error } = spawnSync(process.execPath, [builder, entry], { stdio: 'inherit' });
+  if (status !== 0) throw new Trouble(`${entry} could not be compiled`, { cause: error });
 }
 
 /** @param {string} entry */
@@ -58,11 +73,14 @@ async function isFresh(manifest) {
   return (await Promise.all([present, ...checks])).every(Boolean);
 }
 
-/** @param {string} entry @param {string} name */
-async function build(entry, name) {
-  // The synchronous call leaves no compiler service behind in a process that is about to run for long.
-  const { buildSync } = await import('esbuild');
-  const result = buildSync({
+/**
+ * Compiles `entry` (absolute path) and writes its bundle and manifest, whether stale or not.
+ * @param {string} entry
+ */
+export async function buildBundle(entry) {
+  const name = nameOf(entry);
+  const { build, stop } = await import('esbuild');
+  const result = await build({
     entryPoints: [entry],
     absWorkingDir: repo,
     outfile: join(cacheDir, `${name}.mjs`),
@@ -78,6 +96,7 @@ async function build(entry, name) {
     logLevel: 'error',
     tsconfig: join(repo, 'tsconfig.json'),
   });
+  await stop();
   const code = result.outputFiles[0]?.contents ?? new Uint8Array();
   const bundle = `${name}-${hashOf(code)}.mjs`;
   /** @type {Manifest} */
@@ -86,7 +105,6 @@ async function build(entry, name) {
   await writeWhole(join(cacheDir, bundle), code);
   await writeWhole(join(cacheDir, `${name}.json`), JSON.stringify(manifest));
   await dropOld(name, bundle);
-  return join(cacheDir, bundle);
 }
 
 /** @param {string[]} paths below the repository @returns {Promise<Record<string, string>>} */
