@@ -43,7 +43,7 @@ export function CodeEntry({ rig, value, onChange }: CodeEntryProps) {
         value={value}
         maxLength={CODE_DIGITS}
         onChange={(event) => onChange(event.target.value.replace(/\D/g, ''))}
-        className="figure h-16 w-40 rounded-[2px] border border-ink bg-sheet px-4 text-3xl tracking-[0.3em]"
+        className="figure h-16 w-32 rounded-[2px] border border-ink bg-sheet px-3 text-3xl tracking-[0.2em]"
       />
       <Button size="rig" disabled={show.busy} onClick={() => void show.act({ rigId: rig.id })}>
         Show a code

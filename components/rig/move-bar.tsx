@@ -41,7 +41,7 @@ export function MoveBar({ page, verb, label, waitsFor, children }: MoveBarProps)
       {waitsFor !== null ? <p className="text-lg font-bold">{waitsFor}</p> : null}
       {waitsFor === null && display ? <CodeEntry rig={rig} value={code} onChange={setCode} /> : null}
       {waitsFor === null && !display ? <NoDisplay rig={rig} /> : null}
-      <p className="max-w-72 text-sm text-soft">
+      <p className="max-w-56 text-sm leading-snug text-soft">
         By pressing this you say that you stand at the rig and have read the notes. Local safety rules and
         qualified people come first.
       </p>

@@ -42,32 +42,40 @@ function StartPanel({ page, run }: { page: RigPageDto; run: RunDto }) {
   );
 }
 
+/** What happened and what to bring, but for first pieces, which ask for themselves. */
+function HoldNotice({ run }: { run: RunDto }) {
+  if (!run.holdReason || run.holdReason === 'first-pieces') return null;
+  const words = HOLD_WORDS[run.holdReason];
+  const danger = run.holdReason === 'guard-open' || run.holdReason === 'heater-warm';
+  return (
+    <Notice title={`Held: ${words.happened}`} danger={danger}>
+      <p>{words.bring}</p>
+      {run.holdNote ? <p className="text-soft">{run.holdNote}</p> : null}
+    </Notice>
+  );
+}
+
 /** A held run: what it asks, and the way on. */
 function HeldPanel({ page, run }: { page: RigPageDto; run: RunDto }) {
-  const words = run.holdReason ? HOLD_WORDS[run.holdReason] : null;
-  const measuring = run.piecesToMeasure.length > 0;
   const doubt = run.doubtPiece !== null;
+  if (!doubt && run.piecesToMeasure.length > 0) {
+    return (
+      <MeasurePanel key={run.piecesToMeasure.join()} run={run}>
+        <HoldNotice run={run} />
+      </MeasurePanel>
+    );
+  }
   return (
     <>
       <div className="grid grow content-start gap-4">
-        {words && run.holdReason !== 'first-pieces' ? (
-          <Notice
-            title={`Held: ${words.happened}`}
-            danger={run.holdReason === 'guard-open' || run.holdReason === 'heater-warm'}
-          >
-            <p>{words.bring}</p>
-            {run.holdNote ? <p className="text-soft">{run.holdNote}</p> : null}
-          </Notice>
-        ) : null}
+        <HoldNotice run={run} />
         {doubt ? <DoubtPanel run={run} /> : null}
-        {measuring ? <MeasurePanel key={run.piecesToMeasure.join()} run={run} /> : null}
+        {page.acknowledged ? null : <NotesPanel page={page} />}
         <RunStrip rig={page.rig} run={run} />
       </div>
-      {doubt || measuring ? (
+      {doubt ? (
         <ActBar>
-          <p>
-            {doubt ? 'Settle the piece in doubt before it goes on.' : 'Enter the lengths before it goes on.'}
-          </p>
+          <p>Settle the piece in doubt before it goes on.</p>
           <StopButton run={run} />
         </ActBar>
       ) : (

@@ -89,7 +89,7 @@ export function Signals({ rig }: { rig: RigDto }) {
       <ul>
         {rows.map((row) => {
           const ageMs = row.readAt === null ? null : nowMs - Date.parse(row.readAt);
-          const old = lost || (ageMs !== null && ageMs > READING_OLD_MS);
+          const old = ageMs !== null && (lost || ageMs > READING_OLD_MS);
           return (
             <li key={row.name} className="flex items-baseline gap-3 border-b border-line py-2.5">
               {row.abnormal ? (

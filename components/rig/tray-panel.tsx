@@ -27,12 +27,14 @@ export function TrayPanel({ run }: { run: RunDto }) {
   const set = (kind: Kind) => (text: string) =>
     setCounts((old) => ({ ...old, [kind]: text.replace(/\D/g, '') }));
   const confirm = async () => {
-    if (await clear.act({ runId: run.id, scrapped, sampled })) router.push(routes.label(run.id));
+    if (!(await clear.act({ runId: run.id, scrapped, sampled }))) return;
+    // No piece, no bag, no label.
+    router.push(bagged > 0 ? routes.label(run.id) : routes.floor());
   };
   return (
     <>
-      <section aria-labelledby="tray" className="flex flex-wrap gap-8 py-4">
-        <div className="grow">
+      <section aria-labelledby="tray" className="py-1">
+        <div>
           <h2 id="tray" className="text-xl">
             Empty the tray
           </h2>
@@ -72,9 +74,11 @@ export function TrayPanel({ run }: { run: RunDto }) {
             </p>
           ) : null}
         </div>
-        <Keypad label="Pieces" value={counts[at]} onChange={set(at)} lengthMax={4} />
       </section>
-      <ActBar problem={clear.problem}>
+      <ActBar
+        problem={clear.problem}
+        above={<Keypad row label="Pieces" value={counts[at]} onChange={set(at)} lengthMax={4} />}
+      >
         <p>The label shows this count. Confirm when the tray is empty and back in its slot.</p>
         <Button look="ink" size="rig" disabled={clear.busy || bagged < 0} onClick={() => void confirm()}>
           Tray is empty, make the label
