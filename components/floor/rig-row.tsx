@@ -5,6 +5,7 @@ import { WireSwatch } from '@/components/ui/wire-swatch';
 import { stateNow } from '@/components/live/freshness';
 import { useLive } from '@/components/live/live-provider';
 import { ageWords, wallClock } from '@/components/live/time';
+import { lotName } from '@/lib/fleet/lot-name';
 import { HOLD_WORDS, STATE_WORDS } from '@/lib/fleet/words';
 import type { RigState } from '@/lib/fleet/rig-state';
 import { routes } from '@/lib/routes';
@@ -78,11 +79,7 @@ export function RigRow({ rig }: { rig: RigDto }) {
       <div className="min-w-0">
         <div className="flex justify-between gap-4">
           <p className="truncate">
-            {run ? (
-              `${run.batchName}, lot ${run.lotNumber} · ${run.lengthMm} mm`
-            ) : (
-              <span className="text-soft">no lot</span>
-            )}
+            {run ? `${lotName(run)} · ${run.lengthMm} mm` : <span className="text-soft">no lot</span>}
           </p>
           {run ? (
             <p className="text-soft whitespace-nowrap" data-count={run.cut}>

@@ -54,7 +54,6 @@ export function LotFacts({ rig }: { rig: RigDto }) {
               {durationWords(run.expectedS)}
               {run.firstPieces > 0 ? `, once the first ${run.firstPieces} are measured` : ''}
             </Fact>
-            <Fact name="Line">{run.lineLabel}</Fact>
             {run.batchDueAt ? <Fact name="Due">{wallClock(run.batchDueAt, timeZone, nowMs)}</Fact> : null}
             <Fact name="Blade">
               {rig.blade ? `${rig.blade.label}, ${rig.blade.cuts} cuts so far` : 'none entered'}

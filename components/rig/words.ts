@@ -1,3 +1,4 @@
+import { lotName } from '@/lib/fleet/lot-name';
 import type { RigDto } from '@/lib/schemas/floor';
 
 /** `−0 / +3 mm`, with a true minus sign. */
@@ -21,5 +22,5 @@ export function durationWords(seconds: number): string {
 
 /** How a rig's page names the lot that is on it. */
 export function lotTitle(rig: RigDto): string {
-  return rig.run ? `${rig.run.batchName}, lot ${rig.run.lotNumber}` : 'No lot on this rig';
+  return rig.run ? lotName(rig.run) : 'No lot on this rig';
 }

@@ -1,4 +1,5 @@
 import type { RigDto } from '@/lib/schemas/floor';
+import { lotName } from './lot-name';
 import { HOLD_WORDS } from './words';
 
 /** Who must go where, with what in hand. `mark` says how it is drawn: what is normal is not hatched. `rank` 1 comes first. */
@@ -80,7 +81,7 @@ function wantOf(rig: RigDto): Wanted | null {
     case 'ready':
       return rig.run?.programHeld
         ? {
-            happened: `${rig.run.batchName}, lot ${rig.run.lotNumber} is ready to start`,
+            happened: `${lotName(rig.run)} is ready to start`,
             bring: 'read the notes and start it',
             mark: 'normal',
             rank: 5,
