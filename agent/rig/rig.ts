@@ -46,6 +46,8 @@ export class Rig {
   readonly #queue: RigEvent[] = [];
   #draining: Promise<void> = Promise.resolve();
   #busy = false;
+  /** Resolves when the latest event is on disk; the journal keeps their order. */
+  #written: Promise<void> = Promise.resolve();
   #calmTick: () => void = () => undefined;
   #closed = false;
   readonly #session: Session;
@@ -114,6 +116,7 @@ export class Rig {
     this.#closed = true;
     this.#calmTick();
     await this.#draining;
+    await Promise.allSettled([this.#written]);
     await this.#session.close();
   }
 
@@ -135,7 +138,10 @@ export class Rig {
     if (!this.#busy) this.#draining = this.#drain();
   }
 
-  /** Events one after the other, and of each all effects in their order: a note is on disk before its line goes out. */
+  /**
+   * Events one after the other, and of each all effects in their order: a note is on disk before its line goes out.
+   * What the rig said is written while the next line goes out already: the rig remembers it, too, until it is.
+   */
   async #drain(): Promise<void> {
     this.#busy = true;
     try {
@@ -147,25 +153,34 @@ export class Rig {
           const done = this.#perform(effect);
           if (done) await done;
         }
-        if (changed(before, state)) this.parts.onChange();
+        // What is reported is on disk; a failure is told by the event itself.
+        if (changed(before, state)) this.#written.then(this.parts.onChange, () => undefined);
       }
     } catch (error) {
-      this.#closed = true;
-      this.parts.onFatal(error);
+      this.#fail(error);
     } finally {
       this.#busy = false;
     }
+  }
+
+  #fail(error: unknown): void {
+    if (this.#closed) return;
+    this.#closed = true;
+    this.parts.onFatal(error);
   }
 
   #perform(effect: Effect): Promise<void> | undefined {
     const { recorder, uplink, clock } = this.parts;
     switch (effect.do) {
       case 'event':
-        return recorder.event(effect.body, clock.date());
+        this.#written = recorder.event(effect.body, clock.date());
+        // Whoever waits for it hears of a failure; nobody may be waiting.
+        this.#written.catch((error: unknown) => this.#fail(error));
+        return undefined;
       case 'note':
         return recorder.note(effect.note);
       case 'drop':
-        return this.parts.programs.dropProgram(effect.runId);
+        return this.#written.then(() => this.parts.programs.dropProgram(effect.runId));
       case 'send':
         this.#send(effect);
         return undefined;
@@ -173,8 +188,7 @@ export class Rig {
         this.#session.conversation?.interrupt(effect.command);
         return undefined;
       case 'answer':
-        uplink.answer(effect.commandId, effect.answer);
-        return undefined;
+        return this.#written.then(() => uplink.answer(effect.commandId, effect.answer));
       case 'fetch':
         this.#fetch(effect.commandId, effect.runId);
         return undefined;

@@ -46,7 +46,7 @@ async function finish(at: AgentBench, run: RunProgram): Promise<void> {
 
 async function ended(at: AgentBench): Promise<void> {
   await at.until(({ runner }) => runner === 'tray-full', 'the run ends', 50_000);
-  await at.desk.until(() => at.desk.said('run-ended').length === 1, 'the end is told');
+  await at.told('run-ended', 1);
 }
 
 describe('people at the rig', () => {
@@ -67,7 +67,7 @@ describe('people at the rig', () => {
     const { piecesCut } = await at.until(({ runner }) => runner === 'paused', 'the run is paused');
     expect(piecesCut).toBe(goodClosings(at));
     expect(at.rig.snapshot().jawsShut).toBe(false);
-    expect(at.desk.said('run-paused')).toMatchObject([{ personId: PERSON }]);
+    expect(await at.told('run-paused', 1)).toMatchObject([{ personId: PERSON }]);
     await finish(at, run);
     expect(at.closings()).toHaveLength(21);
   });
@@ -77,7 +77,7 @@ describe('people at the rig', () => {
     await pieces(at, 3);
     await at.desk.give({ kind: 'hold', ...at.envelope(), runId: run.runId, cause: 'curled back' });
     await held(at, 'misfeed');
-    expect(at.desk.said('misfeed')).toMatchObject([
+    expect(await at.told('misfeed', 1)).toMatchObject([
       { cause: 'curled back', foundBy: 'person', personId: PERSON },
     ]);
     await finish(at, run);
@@ -94,7 +94,7 @@ describe('people at the rig', () => {
     const { motionMs } = at.rig.snapshot();
     await held(at, 'work-hold');
     await at.restartAgent();
-    await at.desk.until(() => at.desk.said('agent-started').length === 2, 'the agent is back');
+    await at.told('agent-started', 2);
     await at.until(({ workHold, port }) => workHold && port === 'open', 'the work hold outlives the agent');
     const stranger = { ...at.envelope(), personId: '00000000-0000-4000-8000-0000000000ff' };
     expect(await at.desk.give({ kind: 'end-work-hold', ...stranger })).toMatchObject({ code: 'work-hold' });
@@ -113,7 +113,7 @@ describe('people at the rig', () => {
     const next = at.makeRun({ pieces: 2, lengthMm: LENGTH_MM, tag: 18 });
     expect(await at.takeProgram(next)).toMatchObject({ code: 'tray-not-cleared' });
     await at.restartAgent();
-    await at.desk.until(() => at.desk.said('agent-started').length === 2, 'the agent is back');
+    await at.told('agent-started', 2);
     await at.ready();
     expect(at.report().runner).toBe('tray-full');
     expect(await at.takeProgram(next)).toMatchObject({ code: 'tray-not-cleared' });
@@ -142,7 +142,7 @@ describe('a rig that something happens to', () => {
     await at.ready();
     await at.goOn(run);
     await pieces(at, cut + 2);
-    expect(at.desk.said('trim-cut')).toHaveLength(2);
+    expect(await at.told('trim-cut', 2)).toHaveLength(2);
   });
 
   it('waits at the end of the piece when the guard cuts the motors’ supply itself', async () => {
@@ -152,7 +152,7 @@ describe('a rig that something happens to', () => {
     await at.rig.control({ do: 'guard', open: true });
     await held(at, 'guard-open');
     expect(at.tally.some(({ kind }) => kind === 'killed')).toBe(false);
-    expect(at.desk.said('guard-opened')).toHaveLength(1);
+    expect(await at.told('guard-opened', 1)).toHaveLength(1);
   });
 
   it('holds for wire when the spool ends, and trims the new one', async () => {
@@ -246,7 +246,7 @@ describe('a rig without a spare axis', () => {
     });
     at.startAgent();
     await held(at, 'doubt');
-    expect(at.desk.said('piece-doubted').map(({ piece }) => piece)).toEqual([3]);
+    expect((await at.told('piece-doubted', 1)).map(({ piece }) => piece)).toEqual([3]);
     await at.desk.give({ kind: 'settle-piece', ...at.envelope(), runId: run.runId, answer: 'count' });
     await finish(at, run);
   });

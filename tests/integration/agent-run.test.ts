@@ -15,7 +15,7 @@ describe('a run without any web', () => {
     const run = bench.makeRun({ pieces: 200, lengthMm: 114.02 });
     await bench.start(run);
     await bench.until(({ runner }) => runner === 'tray-full', 'the run ends', 110_000);
-    await bench.desk.until(() => bench?.desk.said('run-ended').length === 1, 'the end is told');
+    await bench.told('run-ended', 1);
 
     const pieces = bench.closings().filter(({ wireMm }) => Math.abs(wireMm - 114.02) <= 0.05);
     expect(pieces).toHaveLength(200);

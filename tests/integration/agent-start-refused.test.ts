@@ -115,7 +115,7 @@ describe('law 5 at the rig: the agent starts nothing', () => {
     };
     expect(await again()).toBe('command-replayed');
     await bench.restartAgent();
-    await bench.desk.until(() => bench.desk.said('agent-started').length === 2, 'the agent is back');
+    await bench.told('agent-started', 2);
     await bench.until(({ runner, port }) => port === 'open' && runner === 'held', 'the run is held');
     expect(await again()).toBe('command-replayed');
     expect(bench.desk.said('run-started')).toHaveLength(1);

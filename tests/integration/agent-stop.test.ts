@@ -45,7 +45,7 @@ describe('stopping', () => {
     const atAnswer = bench.closings().length;
     await bench.desk.open();
     const report = await bench.until(({ runner }) => runner === 'tray-full', 'the run has ended');
-    await bench.desk.until(() => bench.desk.said('run-ended').length === 1, 'the end is told');
+    await bench.told('run-ended', 1);
     expect(bench.desk.said('run-ended')[0]).toMatchObject({ outcome: 'stopped', personId: null });
     // The piece in the planner ends by itself; it is counted, and nothing parks.
     expect(bench.closings().length - atAnswer).toBeLessThanOrEqual(1);
@@ -72,7 +72,7 @@ describe('stopping', () => {
     await pieces(3);
     const answer = await bench.desk.give({ kind: 'stop', ...bench.envelope(), runId: run.runId });
     expect(answer.outcome).toBe('done');
-    await bench.desk.until(() => bench.desk.said('run-ended').length === 1, 'the end is told');
+    await bench.told('run-ended', 1);
     expect(bench.desk.said('run-ended')[0]?.pieces).toBe(bench.closings().length - 1);
   });
 

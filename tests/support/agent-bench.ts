@@ -10,6 +10,7 @@ import type { TallyLine } from '@/agent/virtual/tally';
 import { generateProgram } from '@/lib/program/generate';
 import type { Profile } from '@/lib/program/profile';
 import type { Command, CommandAnswer, Conditions, MovingCommand } from '@/lib/protocol/commands';
+import type { EventBody, EventKind } from '@/lib/protocol/events';
 import type { RunProgram } from '@/lib/protocol/pairing';
 import type { RigReport } from '@/lib/protocol/report';
 import { DESK_PAIRING_CODE, openFakeDesk, type FakeDesk } from './fake-desk';
@@ -170,6 +171,14 @@ export class AgentBench {
       what,
       timeoutMs,
     );
+  }
+
+  /** The events of one kind once the desk was told so many of them. */
+  told<Kind extends EventKind>(kind: Kind, count: number): Promise<Extract<EventBody, { kind: Kind }>[]> {
+    return this.desk.until(() => {
+      const said = this.desk.said(kind);
+      return said.length >= count && said;
+    }, `${count} × ${kind}`);
   }
 
   /** Resolves when the rig is met and every signal that is fitted was read. */
