@@ -21,10 +21,23 @@ export async function waitUntilHealthy(url, signal) {
   throw new Trouble(`The web does not get healthy: ${last}\nSee the logs in the data folder.`);
 }
 
-/** @param {string} url @returns {Promise<string>} "healthy", or what came instead */
-async function askHealth(url) {
+/**
+ * The limit is a race of our own: a fetch was once seen to wait for ever beside an AbortSignal.timeout.
+ * @param {string} url @returns {Promise<string>} "healthy", or what came instead
+ */
+function askHealth(url) {
+  const giveUp = new AbortController();
+  const limit = pause(HEALTH_ANSWER_MS).then(() => {
+    giveUp.abort();
+    return 'no answer in time';
+  });
+  return Promise.race([askOnce(url, giveUp.signal), limit]);
+}
+
+/** @param {string} url @param {AbortSignal} signal */
+async function askOnce(url, signal) {
   try {
-    const response = await fetch(`${url}/api/health`, { signal: AbortSignal.timeout(HEALTH_ANSWER_MS) });
+    const response = await fetch(`${url}/api/health`, { signal });
     return response.status === 200 ? 'healthy' : `${response.status} ${await response.text()}`.slice(0, 300);
   } catch (error) {
     return error instanceof Error ? error.message : 'no answer';
