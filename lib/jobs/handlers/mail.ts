@@ -9,8 +9,12 @@ import type { JobHandler } from './handler';
  */
 export const handleMail: JobHandler = async ({ ctx, payload, post }) => {
   const { outboxId } = JOBS.mail.payload.parse(payload);
-  await withClaim(ctx, outboxId, async (inner) => {
-    const mail = await readMail({ ctx: inner, outboxId });
-    if (mail) await post.send(mail);
+  await withClaim({
+    ctx,
+    id: outboxId,
+    work: async (inner) => {
+      const mail = await readMail({ ctx: inner, outboxId });
+      if (mail) await post.send(mail);
+    },
   });
 };
