@@ -26,7 +26,7 @@ export default defineConfig({
         test: {
           name: 'browser',
           include: ['tests/browser/**/*.test.ts'],
-          globalSetup: ['tests/support/web-build.ts'],
+          globalSetup: ['tests/support/web-build.ts', 'tests/support/browser-house.ts'],
           testTimeout: 180_000,
           hookTimeout: 120_000,
           fileParallelism: false,

@@ -7,6 +7,8 @@ import { routes } from '@/lib/routes';
 import { applyLive } from './apply-live';
 import { openLiveLink } from './live-link';
 
+const LOOK_MS = 250;
+
 interface Live {
   /** The server's time, in ms, told once a second. */
   nowMs: number;
@@ -37,10 +39,12 @@ function useLink(client: QueryClient, serverAt: string): { nowMs: number; lost: 
       if (message.kind === 'session-ended') window.location.assign(routes.signIn());
       else applyLive(client, message);
     });
+    // Looked at more often than it is told, or a lost link would be told up to a second late.
     const timer = setInterval(() => {
-      const nowMs = Date.now();
-      setClock({ nowMs: nowMs + skewMs, lost: nowMs - heardMs > LIVE_TICK_MS * 2 });
-    }, 1_000);
+      const nowMs = Date.now() + skewMs;
+      const lost = Date.now() - heardMs > LIVE_TICK_MS * 2;
+      setClock((old) => (lost !== old.lost || nowMs - old.nowMs >= 1_000 ? { nowMs, lost } : old));
+    }, LOOK_MS);
     return () => {
       clearInterval(timer);
       link.close();

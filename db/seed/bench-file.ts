@@ -2,15 +2,15 @@ import { join } from 'node:path';
 import type { DemoRig } from './demo/rigs';
 import { DEMO_SPOOLS } from './demo/stock';
 
-/** Twice as fast as a real rig: a lot of some hundred pieces ends while somebody learns. */
-const SPEED = 2;
-
 /** A Unix socket's path holds 107 bytes; a rig below a longer folder goes without its faults, not without a port. */
 const SOCKET_PATH_BYTES_MAX = 107;
 
-/** The file of the demo's virtual rigs: each has exactly what its profile says is fitted. */
-export function benchFile(folder: string, rigs: readonly DemoRig[]): object {
-  return { rigs: rigs.map((rig, index) => virtualRig(folder, rig, index)) };
+/**
+ * The file of the demo's virtual rigs: each has exactly what its profile says is fitted. `speed` is motion over a real
+ * rig's.
+ */
+export function benchFile(folder: string, speed: number, rigs: readonly DemoRig[]): object {
+  return { rigs: rigs.map((rig, index) => ({ ...virtualRig(folder, rig, index), speed })) };
 }
 
 function virtualRig(folder: string, { name, profile, mechanics }: DemoRig, index: number): object {
@@ -19,7 +19,6 @@ function virtualRig(folder: string, { name, profile, mechanics }: DemoRig, index
   return {
     name,
     seed: index + 1,
-    speed: SPEED,
     tty: join(folder, 'tty', name),
     tally: join(folder, 'tally', `${name}.jsonl`),
     ...(hasRoom ? { control } : {}),

@@ -10,6 +10,8 @@ export interface DemoPlace {
   dataDir: string;
   /** What the demo's agents call. */
   serverUrl: string;
+  /** How fast the virtual rigs move, over a real one. */
+  rigSpeed: number;
 }
 
 const agentFileSchema = z.looseObject({ pairingCode: z.string() });
@@ -47,7 +49,7 @@ export function writeDemoFiles(
   rmSync(folderOf(place), { recursive: true, force: true });
   mkdirSync(folderOf(place), { recursive: true, mode: 0o700 });
   write(join(folderOf(place), 'accounts.json'), accounts);
-  write(join(folderOf(place), 'rigs.json'), benchFile(folderOf(place), DEMO_RIGS));
+  write(join(folderOf(place), 'rigs.json'), benchFile(folderOf(place), place.rigSpeed, DEMO_RIGS));
   pairingCodes.forEach((code, index) => write(agentFile(place, index), agentConfig(place, index, code)));
 }
 
@@ -60,5 +62,5 @@ export function refreshDemoFiles(place: DemoPlace): void {
     write(path, agentConfig(place, index, pairingCode));
   });
   const rigs = join(folderOf(place), 'rigs.json');
-  if (existsSync(rigs)) write(rigs, benchFile(folderOf(place), DEMO_RIGS));
+  if (existsSync(rigs)) write(rigs, benchFile(folderOf(place), place.rigSpeed, DEMO_RIGS));
 }

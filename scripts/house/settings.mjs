@@ -15,6 +15,7 @@ import { Trouble } from './trouble.mjs';
  * @property {boolean} demo whether an empty database gets the demo workshop
  * @property {string} nextDist folder of the built web, below the repository
  * @property {string} publicUrl what people type
+ * @property {number} [rigSpeed] how fast the demo's virtual rigs move, over a real one
  * @property {boolean} durable false only in tests: the database may then lose its last moments in a crash
  */
 
@@ -62,7 +63,7 @@ function readPort(setting, text, byDefault) {
 
 /**
  * Settings of a house that nobody else knows: free ports on 127.0.0.1 and the build that tests share.
- * @param {string} dataDir @param {{demo: boolean, durable: boolean}} options @returns {Promise<Settings>}
+ * @param {string} dataDir @param {{demo: boolean, durable: boolean, rigSpeed?: number}} options @returns {Promise<Settings>}
  */
 export async function ownSettings(dataDir, options) {
   const [port, dbPort, redisPort, mailPort] = await freePorts(4);
@@ -108,5 +109,6 @@ export function childEnvironment(repoDir, settings, secrets) {
     ELLWAND_MAIL_DIR: join(settings.dataDir, 'mail'),
     ELLWAND_NEXT_DIST: settings.nextDist,
     ELLWAND_REPO: repoDir,
+    ...(settings.rigSpeed ? { ELLWAND_RIG_SPEED: String(settings.rigSpeed) } : {}),
   };
 }

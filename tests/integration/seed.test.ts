@@ -17,7 +17,7 @@ import { openTestDatabase, type TestDatabase } from '@/tests/support/database';
 
 const now = new Date('2026-12-01T08:00:00Z');
 let database: TestDatabase;
-let place: { dataDir: string; serverUrl: string };
+let place: { dataDir: string; serverUrl: string; rigSpeed: number };
 
 const db = () => drizzle(database.pool, { casing: 'snake_case' });
 const readJson = (name: string): unknown =>
@@ -25,7 +25,11 @@ const readJson = (name: string): unknown =>
 
 beforeAll(async () => {
   database = await openTestDatabase();
-  place = { dataDir: mkdtempSync(join(tmpdir(), 'ellwand-seed-')), serverUrl: 'http://127.0.0.1:4300' };
+  place = {
+    dataDir: mkdtempSync(join(tmpdir(), 'ellwand-seed-')),
+    serverUrl: 'http://127.0.0.1:4300',
+    rigSpeed: 2,
+  };
 });
 
 afterAll(async () => {

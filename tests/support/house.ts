@@ -24,17 +24,23 @@ export interface TestHouse {
 
 const LOG_SHOWN = 4000;
 
+interface HouseOptions {
+  demo: boolean;
+  /** How fast the demo's virtual rigs move, over a real one. */
+  rigSpeed?: number;
+}
+
 /**
  * A whole Ellwand of its own, on free ports and in a folder that goes with it: PostgreSQL, Redis, mail fake, web, worker and,
  * with the demo, eight virtual rigs on two agents. Throws with the ends of its logs when it does not come up.
  */
-export async function startTestHouse({ demo }: { demo: boolean }): Promise<TestHouse> {
+export async function startTestHouse({ demo, rigSpeed }: HouseOptions): Promise<TestHouse> {
   const dataDir = mkdtempSync(join(tmpdir(), 'ellwand-house-'));
   chmodSync(dataDir, 0o711);
   const said: string[] = [];
   const log = (name: string) => readLog(dataDir, name);
   try {
-    const settings = await ownSettings(dataDir, { demo, durable: false });
+    const settings = await ownSettings(dataDir, { demo, rigSpeed, durable: false });
     const house = await startHouse({ settings, say: (sentence) => said.push(sentence) });
     return {
       url: house.url,
