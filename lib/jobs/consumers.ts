@@ -2,6 +2,7 @@ import { UnrecoverableError, Worker } from 'bullmq';
 import type { Redis } from 'ioredis';
 import { ZodError } from 'zod';
 import type { ServiceContext, SystemActor } from '@/lib/services/context';
+import { restMs } from './backoff';
 import { QUEUES } from './definitions';
 import { loadHandler } from './handlers/load';
 import type { Post } from './post';
@@ -26,6 +27,9 @@ async function handle(name: string, payload: unknown, { context, post }: Consume
   }
 }
 
+const STALLED_LOOK_MS = 5_000;
+const LOCK_MS = 10_000;
+
 /** One consumer a queue, one job at a time: dispatch must not race itself, and mail servers like it slow. */
 export function openConsumers(options: ConsumerOptions): { close(): Promise<void> } {
   const consumers = QUEUES.map((name) => {
@@ -33,6 +37,12 @@ export function openConsumers(options: ConsumerOptions): { close(): Promise<void
       connection: options.connection,
       prefix: 'ellwand',
       concurrency: 1,
+      // A worker that was killed leaves a job behind: another takes it after this, not after half a minute.
+      stalledInterval: STALLED_LOOK_MS,
+      lockDuration: LOCK_MS,
+      settings: {
+        backoffStrategy: (attempt, _type, _error, job) => restMs(attempt, job?.opts.backoff, Math.random()),
+      },
     });
     worker.on('error', (cause) => options.onFailed(`queue ${name}`, cause));
     worker.on('failed', (job, cause) => options.onFailed(`job ${job?.name ?? name}`, cause));

@@ -7,7 +7,10 @@ export type QueueName = (typeof QUEUES)[number];
 const outboxRow = z.object({ outboxId: z.number().int().positive() });
 const nothing = z.object({});
 
-/** Every job: which queue carries it, what its payload holds (ids, never data), how often it is tried. */
+/**
+ * Every job: which queue carries it, what its payload holds (ids, never data), how often it is tried. A job that was tried
+ * so often is forgotten and made anew from its outbox row, so nothing is lost by giving up.
+ */
 export const JOBS = {
   dispatch: { queue: 'work', payload: outboxRow, attempts: 5, backoffMs: 500 },
   mail: { queue: 'mail', payload: outboxRow, attempts: 12, backoffMs: 2_000 },

@@ -4,13 +4,11 @@ import { JOBS, QUEUES, SCHEDULES, type JobName, type QueueName } from './definit
 
 type Queues = Record<QueueName, Queue>;
 
-const BACKOFF_JITTER = 0.5;
-
 function optionsOf(name: JobName): JobsOptions {
   const { attempts, backoffMs } = JOBS[name];
   return {
     attempts,
-    backoff: { type: 'exponential', delay: backoffMs, jitter: BACKOFF_JITTER },
+    backoff: { type: 'custom', delay: backoffMs },
     // Nothing is kept: the outbox row says what is open, and a job of the same id must be addable again.
     removeOnComplete: true,
     removeOnFail: true,

@@ -1,4 +1,4 @@
-import { asc, isNull, and, lte } from 'drizzle-orm';
+import { and, asc, isNull, lte, sql } from 'drizzle-orm';
 import { outbox } from '@/db/schema/traffic';
 import { outboxSchema, type OutboxEntry } from '@/lib/schemas/outbox';
 import { authoriseSystem } from '../authorise';
@@ -12,7 +12,10 @@ export interface OpenOutboxRow {
   entry: OutboxEntry;
 }
 
-/** What is written and not yet done, oldest first, up to those that are `minAgeMs` old. Rows of no known topic are left out. */
+/**
+ * What is written and not yet done, up to those that are `minAgeMs` old: never relayed ones first, so that many that fail
+ * hold up no new one. Rows of no known topic are left out.
+ */
 export async function listOpenOutbox({
   ctx,
   minAgeMs = 0,
@@ -25,7 +28,7 @@ export async function listOpenOutbox({
     .select()
     .from(outbox)
     .where(and(isNull(outbox.doneAt), lte(outbox.createdAt, new Date(ctx.now.getTime() - minAgeMs))))
-    .orderBy(asc(outbox.id))
+    .orderBy(sql`${outbox.relayedAt} nulls first`, asc(outbox.id))
     .limit(ROWS_MOST);
   return rows.flatMap((row) => {
     const parsed = outboxSchema.safeParse({ topic: row.topic, payload: row.payload });
