@@ -8,12 +8,12 @@ export type Db = NodePgDatabase | Parameters<Parameters<NodePgDatabase['transact
 /** Opens a pool. Every wait is bounded, so that a dead database is an error and not a hanging page. */
 export function openDatabase(
   url: string,
-  options: { connectionsMax?: number } = {},
+  options: { connectionsMax?: number; connectTimeoutMs?: number } = {},
 ): { db: Database; pool: Pool } {
   const pool = new Pool({
     connectionString: url,
     max: options.connectionsMax ?? 10,
-    connectionTimeoutMillis: 1_500,
+    connectionTimeoutMillis: options.connectTimeoutMs ?? 1_500,
     statement_timeout: 15_000,
     idle_in_transaction_session_timeout: 20_000,
   });

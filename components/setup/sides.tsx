@@ -23,7 +23,7 @@ export function Rows({ label, none, children }: { label: string; none: string; c
 /** One row: the name, then what is to be known of it, then what can be done on the right. */
 export function Row({ name, act, children }: { name: ReactNode; act?: ReactNode; children?: ReactNode }) {
   return (
-    <li className="grid gap-x-6 gap-y-2 border-b border-line py-3 sm:grid-cols-[minmax(9rem,14rem)_minmax(0,1fr)_auto]">
+    <li className="grid gap-x-6 gap-y-2 border-b border-line py-3 sm:grid-cols-[minmax(9rem,14rem)_minmax(0,1fr)_minmax(8.5rem,auto)]">
       <div className="name text-lg">{name}</div>
       <div className="min-w-0">{children}</div>
       <div className="flex flex-wrap items-start justify-end gap-3">{act}</div>

@@ -3,17 +3,17 @@
 import { useRouter } from 'next/navigation';
 import { useId, useState, type FormEvent, type ReactNode } from 'react';
 import { Button } from '@/components/ui/button';
-import { ERRORS, type FieldProblem } from '@/lib/errors';
+import { ERRORS } from '@/lib/errors';
 import type { ActionResult } from '@/lib/schemas/action-result';
+import { FormProblem, labelled, type LabelledProblem } from './form-problem';
 import { FormStateContext } from './form-state';
-import { FormProblem } from './form-problem';
 
 /** A server action, handed down by the page. */
 export type SetupAction<Data = unknown> = (input: unknown) => Promise<ActionResult<Data>>;
 
 interface Refusal {
   title: string;
-  fields: FieldProblem[];
+  fields: LabelledProblem[];
   requestId?: string;
 }
 
@@ -50,7 +50,8 @@ export function SetupForm<Data>(props: SetupFormProps<Data>) {
     const typed = new FormData(form);
     const result = await action(read(typed)).catch(() => null);
     setBusy(false);
-    if (!result?.ok) return setRefusal(result ?? { title: ERRORS['service-away'].title, fields: [] });
+    if (!result) return setRefusal({ title: ERRORS['service-away'].title, fields: [] });
+    if (!result.ok) return setRefusal({ ...result, fields: labelled(form, formId, result.fields) });
     setSaid(done);
     if (clears) form.reset();
     onDone?.(result.data, typed);

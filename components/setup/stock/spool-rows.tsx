@@ -1,8 +1,8 @@
 'use client';
 
 import { WireLine } from '@/components/ui/wire-line';
-import { WireSwatch } from '@/components/ui/wire-swatch';
 import type { SpoolDto } from '@/lib/schemas/stock';
+import { wireName } from '@/lib/wire/name';
 import { SetupForm, type SetupAction } from '../form/setup-form';
 import { Row, Rows } from '../sides';
 
@@ -18,7 +18,7 @@ export function SpoolRows({ spools, end }: { spools: SpoolDto[]; end: SetupActio
       {spools.map((spool) => (
         <Row key={spool.id} name={spool.label} act={<EndSpool spool={spool} end={end} />}>
           <div className="flex flex-wrap justify-between gap-x-4">
-            <WireSwatch wire={spool.wire} />
+            <span className="font-mono text-[0.95em]">{wireName(spool.wire)}</span>
             <span className="figure">
               {metres(spool.leftMm)} of {metres(spool.lengthMm)} left
             </span>
