@@ -2,7 +2,7 @@ import { redirect } from 'next/navigation';
 import type { ReactNode } from 'react';
 import { LinkLost } from '@/components/live/link-state';
 import { LiveProvider } from '@/components/live/live-provider';
-import { type RunActions, RunActionsProvider } from '@/components/runs/run-actions';
+import { type ServerServerRunActions, RunActionsProvider } from '@/components/runs/run-actions';
 import { Head } from '@/components/shell/head';
 import { RightsProvider } from '@/components/shell/rights';
 import { serviceContext } from '@/lib/auth/context';
@@ -12,7 +12,7 @@ import { readWorkshop } from '@/lib/services/workshop/read-workshop';
 import * as run from './run-actions';
 
 // A module's own namespace cannot be handed to the browser; its functions can.
-const actions: RunActions = { ...run };
+const actions: ServerRunActions = { ...run };
 
 /** Everything behind the sign-in: the head, the live link, the rights of the person. */
 export default async function DeskLayout({ children }: { children: ReactNode }) {

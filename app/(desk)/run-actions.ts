@@ -1,20 +1,20 @@
 'use server';
 
 import { action } from '@/lib/http/action';
+import { acknowledgeAlarm as acknowledgeAlarmService } from '@/lib/services/alarms/acknowledge-alarm';
 import { acknowledgeNotes as acknowledgeNotesService } from '@/lib/services/runs/acknowledge-notes';
 import { beginWorkHold as beginWorkHoldService } from '@/lib/services/runs/begin-work-hold';
 import { clearTray as clearTrayService } from '@/lib/services/runs/clear-tray';
+import { dropRun as dropRunService } from '@/lib/services/runs/drop-run';
 import { endWorkHold as endWorkHoldService } from '@/lib/services/runs/end-work-hold';
 import { goOn as goOnService } from '@/lib/services/runs/go-on';
 import { holdRun } from '@/lib/services/runs/hold-run';
 import { measurePieces as measurePiecesService } from '@/lib/services/runs/measure-pieces';
-import { pauseRun } from '@/lib/services/runs/pause-run';
 import { releaseLot as releaseLotService } from '@/lib/services/runs/release-lot';
 import { scrapPieces as scrapPiecesService } from '@/lib/services/runs/scrap-pieces';
 import { settlePiece as settlePieceService } from '@/lib/services/runs/settle-piece';
 import { showCode as showCodeService } from '@/lib/services/runs/show-code';
 import { startRun } from '@/lib/services/runs/start-run';
-import { stopRun } from '@/lib/services/runs/stop-run';
 import type { ActionResult } from '@/lib/schemas/action-result';
 import { type CommandOutcome, commandOutcomeSchema } from '@/lib/schemas/run';
 import type { PersonActor, ServiceContext } from '@/lib/services/context';
@@ -41,12 +41,6 @@ export async function start(input: unknown) {
 export async function goOn(input: unknown) {
   return run(goOnService, input);
 }
-export async function pause(input: unknown) {
-  return run(pauseRun, input);
-}
-export async function stop(input: unknown) {
-  return run(stopRun, input);
-}
 export async function hold(input: unknown) {
   return run(holdRun, input);
 }
@@ -70,4 +64,10 @@ export async function beginWorkHold(input: unknown) {
 }
 export async function endWorkHold(input: unknown) {
   return run(endWorkHoldService, input);
+}
+export async function acknowledgeAlarm(input: unknown) {
+  return run(acknowledgeAlarmService, input);
+}
+export async function dropRun(input: unknown) {
+  return run(dropRunService, input);
 }

@@ -2,6 +2,7 @@
 
 import Link from 'next/link';
 import { wallClock } from '@/components/live/time';
+import { useRunAction } from '@/components/runs/use-run-action';
 import { useLive } from '@/components/live/live-provider';
 import { needsOf, type Need } from '@/lib/fleet/needs';
 import { floorSentence } from '@/lib/fleet/sentence';
@@ -13,6 +14,36 @@ const MARKS: Record<Need['mark'], string> = {
   abnormal: 'hatch',
   normal: 'border border-ink',
 };
+
+/** One need: who goes where, with what; and, where it is an alarm, who is on it. */
+function NeedLine({ need }: { need: Need }) {
+  const acknowledge = useRunAction('acknowledgeAlarm');
+  const { alarm } = need;
+  return (
+    <li className="flex min-h-11 break-inside-avoid flex-wrap items-center gap-x-3">
+      <Link
+        href={routes.rig(need.rigId)}
+        className="flex min-h-11 flex-wrap items-center gap-x-3 hover:underline"
+      >
+        <span aria-hidden className={`h-4 w-6 shrink-0 ${MARKS[need.mark]}`} />
+        <span className="name">{need.rigName}</span>
+        <span>{need.happened}</span>
+        <span className="text-soft">{need.bring}</span>
+      </Link>
+      {alarm?.byName ? <span className="text-soft">{alarm.byName} is on it</span> : null}
+      {alarm && alarm.byName === null ? (
+        <button
+          type="button"
+          className="min-h-11 px-2 underline"
+          disabled={acknowledge.busy}
+          onClick={() => void acknowledge.act({ alarmId: alarm.id })}
+        >
+          I am on it<span className="sr-only">: {need.rigName}</span>
+        </button>
+      ) : null}
+    </li>
+  );
+}
 
 /** The floor's first lines: what is to be done, then who must go where with what in hand. */
 export function FloorHead({ rigs, waiting }: { rigs: RigDto[]; waiting: WaitingDto }) {
@@ -26,17 +57,7 @@ export function FloorHead({ rigs, waiting }: { rigs: RigDto[]; waiting: WaitingD
       </h1>
       <ul className={`mt-2 ${needs.length > 4 ? 'gap-x-8 lg:columns-2' : ''}`} aria-label="Who must go where">
         {needs.map((need) => (
-          <li key={need.rigId} className="break-inside-avoid">
-            <Link
-              href={routes.rig(need.rigId)}
-              className="flex min-h-11 flex-wrap items-center gap-x-3 hover:underline"
-            >
-              <span aria-hidden className={`h-4 w-6 shrink-0 ${MARKS[need.mark]}`} />
-              <span className="name">{need.rigName}</span>
-              <span>{need.happened}</span>
-              <span className="text-soft">{need.bring}</span>
-            </Link>
-          </li>
+          <NeedLine key={need.key} need={need} />
         ))}
       </ul>
     </section>

@@ -8,6 +8,7 @@ import { useRights } from '@/components/shell/rights';
 import { rigPageQuery } from '@/lib/queries/floor';
 import type { RigPageDto } from '@/lib/schemas/floor';
 import type { SpoolDto } from '@/lib/schemas/stock';
+import { DropLot } from './drop-lot';
 import { LoadSpool, type LoadAction } from './load-spool';
 import { LotFacts } from './lot-facts';
 import { Log } from './log';
@@ -45,6 +46,7 @@ export function RigView({ initial, personId, spools, load }: RigViewProps) {
           <LotFacts rig={rig} />
           <Signals rig={rig} />
           {may('rigs.load') && quiet ? <LoadSpool rig={rig} spools={spools} load={load} /> : null}
+          {may('runs.operate') && rig.run?.state === 'prepared' ? <DropLot run={rig.run} /> : null}
           {may('rigs.hold') && !rig.workHold ? <WorkHoldButton rig={rig} /> : null}
         </div>
         <Panels page={page} state={state} />

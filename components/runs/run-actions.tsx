@@ -1,10 +1,11 @@
 'use client';
 
-import { createContext, useContext, type ReactNode } from 'react';
+import { createContext, useContext, useMemo, type ReactNode } from 'react';
 import type { ActionResult } from '@/lib/schemas/action-result';
 import type { CommandOutcome } from '@/lib/schemas/run';
+import { postStop } from './post-stop';
 
-/** What can be done to a run or its rig; each is a server action that parses its input by the schema of its name. */
+/** What can be done to a run, its rig or its alarms; each is a server action that parses its input by the schema of its name. */
 export const RUN_VERBS = [
   'acknowledgeNotes',
   'showCode',
@@ -20,18 +21,31 @@ export const RUN_VERBS = [
   'releaseLot',
   'beginWorkHold',
   'endWorkHold',
+  'acknowledgeAlarm',
+  'dropRun',
 ] as const;
 export type RunVerb = (typeof RUN_VERBS)[number];
 
 /** `null` where nothing was asked of the rig. */
 export type RunAction = (input: unknown) => Promise<ActionResult<CommandOutcome | null>>;
 export type RunActions = Record<RunVerb, RunAction>;
+/** What the server's actions do; pause and stop go their own way. */
+export type ServerRunActions = Omit<RunActions, 'pause' | 'stop'>;
+
+const STOPS = { pause: postStop('pause'), stop: postStop('stop') };
 
 const RunActionsContext = createContext<RunActions | null>(null);
 
 /** Hands the server's actions down to the components, which may not import them. */
-export function RunActionsProvider({ actions, children }: { actions: RunActions; children: ReactNode }) {
-  return <RunActionsContext value={actions}>{children}</RunActionsContext>;
+export function RunActionsProvider({
+  actions,
+  children,
+}: {
+  actions: ServerRunActions;
+  children: ReactNode;
+}) {
+  const all = useMemo(() => ({ ...actions, ...STOPS }), [actions]);
+  return <RunActionsContext value={all}>{children}</RunActionsContext>;
 }
 
 /** @throws Error outside a `RunActionsProvider`. */

@@ -1,115 +1,84 @@
 import type { RigDto } from '@/lib/schemas/floor';
+import { alarmWords } from './alarm-words';
 import { lotName } from './lot-name';
-import { HOLD_WORDS } from './words';
 
-/** Who must go where, with what in hand. `mark` says how it is drawn: what is normal is not hatched. `rank` 1 comes first. */
+/**
+ * Who must go where, with what in hand. `alarm` is the standing alarm behind it, with the name of whoever is on it;
+ * null for what merely can be done. `mark` says how it is drawn: what is normal is not hatched.
+ */
 export interface Need {
+  key: string;
   rigId: string;
   rigName: string;
   happened: string;
   bring: string;
   mark: 'danger' | 'abnormal' | 'normal';
-  rank: number;
   sinceAt: string;
+  alarm: { id: string; byName: string | null } | null;
 }
 
-type Wanted = Omit<Need, 'rigId' | 'rigName' | 'sinceAt'> & { sinceAt: string | null };
+interface Ranked {
+  need: Need;
+  rank: number;
+  bench: number;
+}
 
-function heldNeed(rig: RigDto): Wanted | null {
-  const run = rig.run;
-  if (!run || run.state !== 'held' || !run.holdReason) return null;
-  const words = HOLD_WORDS[run.holdReason];
-  const urgent = run.holdReason === 'guard-open' || run.holdReason === 'heater-warm';
-  const at = run.holdReason === 'first-pieces' ? '' : ` at piece ${Math.min(run.cut + 1, run.pieces)}`;
-  const happened =
-    run.holdReason === 'first-pieces'
-      ? `${run.piecesToMeasure.length} pieces cut, measure them before the other ${run.pieces - run.cut}`
-      : `${words.happened}${at}`;
-  return {
+const RANK_OF_PAUSED = 4;
+const RANK_OF_READY = 5;
+
+function alarmNeeds(rig: RigDto): Ranked[] {
+  return rig.alarms.map((alarm) => ({
+    rank: alarm.priority,
+    bench: rig.benchOrder,
+    need: {
+      key: alarm.id,
+      rigId: rig.id,
+      rigName: rig.name,
+      ...alarmWords(alarm, rig),
+      mark: alarm.priority === 1 ? 'danger' : 'abnormal',
+      sinceAt: alarm.raisedAt,
+      alarm: { id: alarm.id, byName: alarm.acknowledgedByName },
+    },
+  }));
+}
+
+function chance(rig: RigDto, rank: number, happened: string, bring: string, sinceAt: string): Ranked[] {
+  const need: Need = {
+    key: `${rig.id} ${rank}`,
+    rigId: rig.id,
+    rigName: rig.name,
     happened,
-    bring: words.bring,
-    mark: urgent ? 'danger' : 'abnormal',
-    rank: urgent ? 1 : 2,
-    sinceAt: run.stateSince,
+    bring,
+    mark: 'normal',
+    sinceAt,
+    alarm: null,
   };
+  return [{ rank, bench: rig.benchOrder, need }];
 }
 
-function wantOf(rig: RigDto): Wanted | null {
-  switch (rig.state) {
-    case 'silent':
-      return rig.run && rig.run.state !== 'prepared'
-        ? {
-            happened: 'not heard; it may still be moving',
-            bring: 'go and look',
-            mark: 'danger',
-            rank: 1,
-            sinceAt: rig.heardAt,
-          }
-        : null;
-    case 'blocked':
-      return rig.run
-        ? {
-            happened: 'the guard is open',
-            bring: 'go and look; nothing moves until you say so at the rig',
-            mark: 'danger',
-            rank: 1,
-            sinceAt: rig.run.stateSince,
-          }
-        : null;
-    case 'held':
-      return heldNeed(rig);
-    case 'tray full':
-      return rig.run
-        ? {
-            happened: `run over, ${rig.run.bagged} pieces in the tray`,
-            bring: 'a bag and a label',
-            mark: 'abnormal',
-            rank: 3,
-            sinceAt: rig.run.endedAt,
-          }
-        : null;
-    case 'paused':
-      return rig.run
-        ? {
-            happened: `paused at piece ${rig.run.cut}`,
-            bring: 'go on at the rig',
-            mark: 'normal',
-            rank: 4,
-            sinceAt: rig.run.stateSince,
-          }
-        : null;
-    case 'ready':
-      return rig.run?.programHeld
-        ? {
-            happened: `${lotName(rig.run)} is ready to start`,
-            bring: 'read the notes and start it',
-            mark: 'normal',
-            rank: 5,
-            sinceAt: null,
-          }
-        : null;
-    default:
-      return null;
+/** What is no alarm and waits for a person all the same: a pause, a lot that can start. */
+function chances(rig: RigDto): Ranked[] {
+  const { run, state } = rig;
+  if (!run) return [];
+  if (state === 'paused') {
+    return chance(rig, RANK_OF_PAUSED, `paused at piece ${run.cut}`, 'go on at the rig', run.stateSince);
   }
+  if (state === 'ready' && run.state === 'prepared' && run.programHeld) {
+    return chance(
+      rig,
+      RANK_OF_READY,
+      `${lotName(run)} is ready to start`,
+      'read the notes and start it',
+      run.stateSince,
+    );
+  }
+  return [];
 }
 
-/** The needs of all rigs, the most urgent first, then in bench order. */
+/** The needs of all rigs: alarms by priority, then what can be done; within these in bench order. */
 export function needsOf(rigs: readonly RigDto[]): Need[] {
   return rigs
-    .flatMap((rig) => {
-      const want = wantOf(rig);
-      return want
-        ? [
-            {
-              ...want,
-              rigId: rig.id,
-              rigName: rig.name,
-              sinceAt: want.sinceAt ?? rig.at,
-              bench: rig.benchOrder,
-            },
-          ]
-        : [];
-    })
+    .flatMap((rig) => [...alarmNeeds(rig), ...chances(rig)])
     .sort((a, b) => a.rank - b.rank || a.bench - b.bench)
-    .map(({ bench: _bench, ...need }) => need);
+    .map(({ need }) => need);
 }

@@ -49,7 +49,7 @@ export function floorSentence(
   clock: (at: string) => string,
 ): FloorSentence {
   if (rigs.length === 0) return { urgent: 'There are no rigs yet.', rest: 'An owner adds them in Set-up.' };
-  const wanted = needs.length;
+  const wanted = new Set(needs.map((need) => need.rigId)).size;
   const urgent =
     wanted === 0
       ? 'Nobody is needed.'
