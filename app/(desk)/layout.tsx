@@ -2,7 +2,7 @@ import { redirect } from 'next/navigation';
 import type { ReactNode } from 'react';
 import { LinkLost } from '@/components/live/link-state';
 import { LiveProvider } from '@/components/live/live-provider';
-import { type ServerServerRunActions, RunActionsProvider } from '@/components/runs/run-actions';
+import { type ServerRunActions, RunActionsProvider } from '@/components/runs/run-actions';
 import { Head } from '@/components/shell/head';
 import { RightsProvider } from '@/components/shell/rights';
 import { serviceContext } from '@/lib/auth/context';
