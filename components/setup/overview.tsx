@@ -86,7 +86,7 @@ export function Overview(props: OverviewProps) {
                 </Link>
               }
             >
-              <p>{said}</p>
+              <p className="flex min-h-11 items-center">{said}</p>
               {todo ? <p className="font-bold">{todo}</p> : null}
             </Row>
           ))}
