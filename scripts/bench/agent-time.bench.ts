@@ -19,11 +19,13 @@ const LENGTHS_MM = [25, 114];
 const DEFAULT_MINUTES = 3;
 const PIECES_LEAST = 10;
 const RIG_SPEED = 1;
+/** As `npm run agent` starts it. */
+const LEAN = ['--max-semi-space-size=1', '--optimize-for-size'];
 
 function startTimedAgent(bench: AgentBench, trafficFile: string): void {
   const entry = 'scripts/bench/agent-time/timed-agent.ts';
   const files = ['--config', bench.configPath, '--traffic', trafficFile];
-  bench.agent = spawn(process.execPath, ['scripts/run.mjs', entry, '--', ...files], {
+  bench.agent = spawn(process.execPath, [...LEAN, 'scripts/run.mjs', entry, '--', ...files], {
     stdio: ['ignore', 'ignore', 'inherit'],
   });
 }

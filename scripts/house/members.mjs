@@ -14,6 +14,8 @@ import { systemEnvironment } from './task.mjs';
  */
 
 const run = join(repo, 'scripts', 'run.mjs');
+/** An agent lives beside a rig on a small computer: its young heap stays small; 86 MB instead of 125 while cutting. */
+const LEAN = ['--max-semi-space-size=1', '--optimize-for-size'];
 const nextProgram = join(repo, 'node_modules', 'next', 'dist', 'bin', 'next');
 
 /**
@@ -56,7 +58,7 @@ export function floorMembers(dataDir) {
     .map((file) => ({
       name: file.replace('.json', '').replace('-', ' '),
       log: file.replace('.json', ''),
-      args: [run, 'agent/main.ts', '--config', join(folder, file)],
+      args: [...LEAN, run, 'agent/main.ts', '--config', join(folder, file)],
       env,
       ceilingMs: 4000,
     }));
