@@ -10,6 +10,14 @@ import { fullWireName } from '@/lib/wire/name';
 /** Typing asks the server only after this rest. */
 const SEARCH_REST_MS = 300;
 
+/** What the button says of the order, as it is and turned round. */
+const WAY_WORDS: Record<BatchList['sort'], [usual: string, turned: string]> = {
+  due: ['Soonest first', 'Latest first'],
+  priority: ['Highest first', 'Lowest first'],
+  number: ['Oldest first', 'Newest first'],
+  name: ['A to Z', 'Z to A'],
+};
+
 interface BatchFiltersProps {
   list: BatchList;
   wires: WireDto[];
@@ -43,9 +51,11 @@ export function BatchFilters({ list, wires, onChange }: BatchFiltersProps) {
     <form
       role="search"
       onSubmit={(event) => event.preventDefault()}
-      className="page grid items-end gap-4 border-b border-line bg-sheet py-4 sm:grid-cols-2 lg:grid-cols-[2fr_1fr_2fr_1fr_1fr_auto]"
+      className="page grid items-end gap-4 border-b border-line bg-sheet py-4 grid-cols-2 lg:grid-cols-[2fr_1fr_2fr_1fr_1fr_9.5rem]"
     >
-      <Search search={list.search} onChange={onChange} />
+      <div className="max-lg:col-span-2">
+        <Search search={list.search} onChange={onChange} />
+      </div>
       <SelectField
         label="State"
         value={list.state}
@@ -92,8 +102,8 @@ export function BatchFilters({ list, wires, onChange }: BatchFiltersProps) {
         <option value="number">Number</option>
         <option value="name">Name</option>
       </SelectField>
-      <Button aria-pressed={list.descending} onClick={() => onChange({ descending: !list.descending })}>
-        {list.descending ? 'Last first' : 'First first'}
+      <Button className="whitespace-nowrap" onClick={() => onChange({ descending: !list.descending })}>
+        {WAY_WORDS[list.sort][list.descending ? 1 : 0]}
       </Button>
     </form>
   );

@@ -46,7 +46,7 @@ function ColumnHeads() {
   return (
     <div
       aria-hidden
-      className="hidden gap-2 border-b border-ink pb-1 text-sm font-bold md:grid md:grid-cols-[2rem_1.5fr_2.5fr_1fr_1fr_0.7fr_0.7fr_3.1rem]"
+      className="hidden gap-2 border-b border-ink pb-1 text-sm font-bold md:grid md:grid-cols-[2rem_1.5fr_2.5fr_1fr_1fr_0.7fr_0.7fr_2.75rem]"
     >
       <span />
       <span>Label</span>

@@ -56,7 +56,7 @@ export function LineFields({ row, index, wires, fields, onType, onRemove, onNext
   const fixed = row.committed > 0;
   return (
     <li className="border-b border-line py-2">
-      <div className="grid grid-cols-2 items-center gap-2 md:grid-cols-[2rem_1.5fr_2.5fr_1fr_1fr_0.7fr_0.7fr_auto]">
+      <div className="grid grid-cols-2 items-center gap-2 md:grid-cols-[2rem_1.5fr_2.5fr_1fr_1fr_0.7fr_0.7fr_2.75rem]">
         <span className="figure hidden text-right text-soft md:block">{place}</span>
         <input {...cell('label')} autoComplete="off" maxLength={80} placeholder="Label" />
         <div className="flex items-center gap-2">
@@ -84,17 +84,17 @@ export function LineFields({ row, index, wires, fields, onType, onRemove, onNext
         <input {...cell('pieces')} inputMode="numeric" autoComplete="off" placeholder="40" />
         <input {...cell('minus')} disabled={fixed} inputMode="decimal" autoComplete="off" />
         <input {...cell('plus')} disabled={fixed} inputMode="decimal" autoComplete="off" />
-        <Button disabled={fixed} onClick={onRemove} aria-label={`Take line ${place} out`}>
+        <Button disabled={fixed} onClick={onRemove} aria-label={`Take line ${place} out`} className="px-0">
           <span aria-hidden>×</span>
         </Button>
       </div>
       {fixed ? (
-        <p className="text-sm text-soft md:pl-10">
+        <p className="mt-1 text-sm text-soft md:pl-10">
           {row.committed} pieces are cut or on a rig: they stay. Pieces may not go below {row.committed}.
         </p>
       ) : null}
       {problems.length > 0 ? (
-        <p id={`problems-${row.key}`} className="text-sm font-bold text-signal md:pl-10">
+        <p id={`problems-${row.key}`} className="mt-1.5 text-sm font-bold text-signal md:pl-10">
           {problems.map(({ field, message }) => `${WORDS[field]}: ${message}`).join(' ')}
         </p>
       ) : null}

@@ -10,7 +10,7 @@ import { lotWords } from './words';
 function Lot({ lot }: { lot: LotDto }) {
   const onRig = lot.rigId !== null && lot.state !== 'bagged';
   return (
-    <li className="grid grid-cols-[3.5rem_3.5rem_1fr] items-baseline gap-x-3 py-0.5">
+    <li className="grid grid-cols-[2.8rem_2.2rem_1fr] items-baseline gap-x-3 py-0.5">
       <span className="text-soft">lot {lot.number}</span>
       <span className="figure text-right">{lot.pieces}</span>
       <span>
@@ -33,25 +33,29 @@ function Lot({ lot }: { lot: LotDto }) {
 /** One line of a batch: what is to be cut, drawn as wire on a rule, and where its lots are. */
 export function LineRow({ line }: { line: BatchLineDto }) {
   return (
-    <li className="page grid gap-x-8 gap-y-2 border-b border-line py-3 md:grid-cols-[minmax(180px,240px)_1fr_minmax(300px,420px)]">
+    <li className="page grid items-start gap-x-8 gap-y-1 border-b border-line py-2.5 md:grid-cols-[minmax(230px,290px)_1fr_7rem_minmax(280px,400px)]">
       <div>
-        <p className="name text-lg break-words">{line.label}</p>
+        <p className="flex flex-wrap items-baseline gap-x-3">
+          <span className="name text-lg break-words">{line.label}</span>
+          <WireSwatch wire={line.wire} />
+        </p>
         <p>
           <span className="figure text-lg">
             {line.pieces} × {spokenMm(line.lengthMm)}
           </span>{' '}
           <span className="text-sm text-soft">
-            {toleranceWords(line.toleranceMinusMm, line.tolerancePlusMm)}
+            {toleranceWords(line.toleranceMinusMm, line.tolerancePlusMm)}, {line.wire.insulation}
           </span>
         </p>
-        <WireSwatch wire={line.wire} /> <span className="text-sm text-soft">{line.wire.insulation}</span>
       </div>
-      <div>
-        <CutRule colour={line.wire.colour} pieces={line.pieces} cut={line.cut} bagged={line.bagged} />
-        <p className="mt-1 text-sm">
-          <span className="font-bold">{line.cut} cut</span>, {line.bagged} in bags
-        </p>
-      </div>
+      <CutRule colour={line.wire.colour} pieces={line.pieces} cut={line.cut} bagged={line.bagged} />
+      <p className="text-sm md:text-right">
+        <span className="figure text-lg">{line.cut}</span> cut
+        <span className="text-soft md:block">
+          <span className="md:hidden">, </span>
+          {line.bagged} in bags
+        </span>
+      </p>
       {line.lots.length > 0 ? (
         <ul aria-label={`Lots of ${line.label}`} className="text-sm">
           {line.lots.map((lot) => (

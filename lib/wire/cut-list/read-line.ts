@@ -18,6 +18,8 @@ export interface LineReader {
   known: CutListKnowledge;
 }
 
+/** A wire is said by three cells: any of them may be the wrong one. */
+const WIRE_COLUMNS = 'gauge_awg, insulation, colour';
 const EARTH = 'Green with yellow is kept for protective earth. Is this an earth wire?';
 /** Longer finds are cut: the page shows them in a narrow column. */
 const FOUND_CHARACTERS_MOST = 60;
@@ -64,7 +66,7 @@ export function readLine(row: CutListRow, { places, separator, known }: LineRead
   if (gaugeAwg !== null && colour !== null && insulation !== null) {
     const match = matchWire(known.wires, { gaugeAwg, colour, insulation, conductor: text('conductor') });
     if (match.ok) line.wire = match.wire;
-    else problems.push({ row: row.row, column: null, found: match.found, instead: match.instead });
+    else problems.push({ row: row.row, column: WIRE_COLUMNS, found: match.found, instead: match.instead });
   }
   if (colour !== null && isEarthColour(colour)) {
     warnings.push({ row: row.row, column: 'colour', found: shown(text('colour')), instead: EARTH });
