@@ -9,7 +9,12 @@ export default defineConfig({
     projects: [
       {
         resolve: { alias },
-        test: { name: 'unit', include: ['tests/unit/**/*.test.{ts,tsx}', 'tests/checks/**/*.test.ts'] },
+        // The limits are for what hangs, not for a computer that is busy with something else.
+        test: {
+          name: 'unit',
+          include: ['tests/unit/**/*.test.{ts,tsx}', 'tests/checks/**/*.test.ts'],
+          testTimeout: 60_000,
+        },
       },
       {
         resolve: { alias },

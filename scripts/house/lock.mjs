@@ -1,8 +1,9 @@
 /** One start for each data folder, and what a start that was killed has left running there. */
-import { linkSync, mkdirSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs';
+import { mkdirSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { endLeftOverCluster } from './cluster.mjs';
-import { endStranger, identify, isAlive } from './process.mjs';
+import { holdFile } from './held-file.mjs';
+import { endStranger, isAlive } from './process.mjs';
 import { Trouble } from './trouble.mjs';
 
 /** @typedef {import('./process.mjs').Identity} Identity */
@@ -16,40 +17,10 @@ import { Trouble } from './trouble.mjs';
 export function takeLock(dataDir, address) {
   // The database's user passes through it; nobody lists it.
   mkdirSync(dataDir, { recursive: true, mode: 0o711 });
-  const file = join(dataDir, 'start.lock');
-  const mine = { identity: identify(process.pid), address };
-  const draft = `${file}.${process.pid}`;
-  writeFileSync(draft, JSON.stringify(mine), { mode: 0o600 });
-  try {
-    // A link is made by one process only, and what it shows is complete.
-    if (!tryLink(draft, file)) {
-      refuseWhenAlive(dataDir, file);
-      rmSync(file, { force: true });
-      if (!tryLink(draft, file)) throw new Trouble(`Another start is just taking ${dataDir}.`);
-    }
-  } finally {
-    rmSync(draft, { force: true });
-  }
-  return { release: () => rmSync(file, { force: true }), record: childRecord(dataDir) };
-}
-
-/** @param {string} from @param {string} to */
-function tryLink(from, to) {
-  try {
-    linkSync(from, to);
-    return true;
-  } catch (error) {
-    if (error instanceof Error && 'code' in error && error.code === 'EEXIST') return false;
-    throw error;
-  }
-}
-
-/** @param {string} dataDir @param {string} file */
-function refuseWhenAlive(dataDir, file) {
-  const holder = readJson(file);
-  if (!holder?.identity || !isAlive(holder.identity)) return;
+  const { release, holder } = holdFile(join(dataDir, 'start.lock'), address);
+  if (release) return { release, record: childRecord(dataDir) };
   throw new Trouble(
-    `Ellwand already runs on ${dataDir}: process ${holder.identity.pid}, ${holder.address}.\n` +
+    `Ellwand already runs on ${dataDir}: process ${holder.identity?.pid}, ${holder.note}.\n` +
       'A second one beside it needs ELLWAND_DATA_DIR and ports of its own: ' +
       'PORT, ELLWAND_DB_PORT, ELLWAND_REDIS_PORT, ELLWAND_MAIL_PORT.',
   );

@@ -2,9 +2,12 @@
 import { createHash } from 'node:crypto';
 import { existsSync, readFileSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
+import { holdFile } from './held-file.mjs';
+import { pause } from './ports.mjs';
 import { repo } from './repo.mjs';
 import { runTask } from './task.mjs';
 
+const WAIT_MS = 500;
 const FOLDERS = ['app', 'components', 'db', 'lib', 'public'];
 const FILES = [
   'next.config.mjs',
@@ -17,10 +20,34 @@ const FILES = [
 ];
 
 /**
- * Builds the web into `nextDist` (below the repository) when it is stale.
- * @param {{nextDist: string, logFile?: string, say: (sentence: string) => void, signal?: AbortSignal}} options
+ * @typedef {object} WebBuild
+ * @property {string} nextDist folder of the build, below the repository
+ * @property {string} [logFile]
+ * @property {(sentence: string) => void} say
+ * @property {AbortSignal} [signal]
  */
-export async function ensureWebBuild({ nextDist, logFile, say, signal }) {
+
+/**
+ * Builds the web into `nextDist` when it is stale. Waits while another process builds there.
+ * @param {WebBuild} build
+ */
+export async function ensureWebBuild(build) {
+  const file = join(repo, `${build.nextDist}.building`);
+  let hold = holdFile(file, 'a build');
+  while (!hold.release) {
+    build.signal?.throwIfAborted();
+    await pause(WAIT_MS);
+    hold = holdFile(file, 'a build');
+  }
+  try {
+    await buildWhenStale(build);
+  } finally {
+    hold.release();
+  }
+}
+
+/** @param {WebBuild} build */
+async function buildWhenStale({ nextDist, logFile, say, signal }) {
   const mark = join(repo, nextDist, 'ellwand-sources');
   const sources = hashOfSources();
   if (existsSync(mark) && readFileSync(mark, 'utf8') === sources) return;

@@ -87,13 +87,6 @@ export const rooms = [
     name: 'lib/live',
     files: ['lib/live/**'],
     own: ['lib/live'],
-    knows: ['db', 'lib/services', 'lib/env', ...pure],
-    noPackages: [QUEUE, SERIAL],
-  },
-  {
-    name: 'lib/live',
-    files: ['lib/live/**'],
-    own: ['lib/live'],
     knows: ['lib/auth', 'lib/services', 'lib/env', ...pure],
     noPackages: [QUEUE, SERIAL, DATABASE, MAIL, FRAMEWORK],
   },

@@ -1,5 +1,5 @@
 import { spawn, type ChildProcess } from 'node:child_process';
-import { once } from 'node:events';
+import { EventEmitter, once } from 'node:events';
 import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import type { Identity } from '@/scripts/house/process.mjs';
@@ -35,7 +35,15 @@ export function npmStart(settings: Settings, args: string[] = []): StartCommand 
     stdio: ['ignore', 'pipe', 'pipe'],
   });
   let text = '';
-  for (const stream of [child.stdout, child.stderr]) stream.on('data', (chunk) => (text += String(chunk)));
+  const news = new EventEmitter();
+  for (const stream of [child.stdout, child.stderr]) {
+    stream.on('data', (chunk) => {
+      text += String(chunk);
+      news.emit('news');
+    });
+  }
+  const ended = once(child, 'close').then(([code]) => (typeof code === 'number' ? code : null));
+  void ended.then(() => news.emit('news'));
   return {
     url: settings.publicUrl,
     process: child,
@@ -43,10 +51,10 @@ export function npmStart(settings: Settings, args: string[] = []): StartCommand 
     hasPrinted: async (wanted) => {
       while (!text.includes(wanted)) {
         if (child.exitCode !== null) throw new Error(`It ended without "${wanted}":\n${text}`);
-        await Promise.race([once(child.stdout, 'data'), once(child.stderr, 'data'), once(child, 'close')]);
+        await once(news, 'news');
       }
     },
-    ended: once(child, 'close').then(([code]) => (typeof code === 'number' ? code : null)),
+    ended,
   };
 }
 

@@ -12,6 +12,7 @@ const DOCUMENTS = ['README.md', 'DEVELOPERS.md'];
 
 /** Whether a file does nothing but hand on what others export. */
 function isBarrel(path: string): boolean {
+  if (!/^export .*from /m.test(textOf(path))) return false;
   const { statements } = treeOf(path);
   return statements.length > 1 && statements.every((it) => ts.isExportDeclaration(it) && it.moduleSpecifier);
 }

@@ -6,8 +6,8 @@ const AUTHORISING = ['authorise', 'authoriseAgent', 'authoriseSystem'];
 /** Verbs that run before anybody is known, or tell what everybody may know. */
 const BEFORE_ANYBODY = ['pairAgent', 'readHealth', 'readWorkshop', 'workshopIsEmpty'];
 
-/** What callers outside of lib/services use of it without being a verb: finding out who is there, and contexts. */
-const NO_VERBS = ['findSessionActor', 'openServices'];
+/** What callers outside of lib/services use of it without being a verb: who is there, the database, the claim of a job. */
+const NO_VERBS = ['findSessionActor', 'openServices', 'withClaim', 'withTopicClaim'];
 
 const functions = filesIn('lib/services', /\.ts$/).flatMap(functionsOf);
 const verbs = functions.filter(({ isExported, takesContext }) => isExported && takesContext);
