@@ -5,6 +5,7 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import pg from 'pg';
 import { afterEach, beforeEach, expect, it } from 'vitest';
+import { readDemoAccounts } from '@/scripts/house/demo.mjs';
 import { isAlive } from '@/scripts/house/process.mjs';
 import { ownSettings } from '@/scripts/house/settings.mjs';
 import { npmStart, runningIn, startProcess, type StartCommand } from '@/tests/support/start-command';
@@ -53,6 +54,28 @@ async function countPeople(): Promise<number> {
   }
 }
 
+/** Signs the demo's operator in and opens the event stream; returns once the stream has begun. */
+async function openStream(): Promise<void> {
+  const url = settings.publicUrl;
+  const demoAccounts = readDemoAccounts(settings.dataDir);
+  const email = demoAccounts?.accounts.find(({ roles }) => roles.includes('operator'))?.email;
+  if (!demoAccounts || !email) throw new Error('The demo has no operator');
+  const asked = await fetch(`${url}/api/auth/csrf`);
+  const { csrfToken } = (await asked.json()) as { csrfToken: string };
+  const body = new URLSearchParams({ csrfToken, json: 'true', email, password: demoAccounts.password });
+  const headers = { cookie: cookiesOf(asked), 'content-type': 'application/x-www-form-urlencoded' };
+  const answer = await fetch(`${url}/api/auth/callback/credentials`, { method: 'POST', headers, body });
+  const stream = await fetch(`${url}/api/live`, { headers: { cookie: cookiesOf(answer) } });
+  expect(stream.headers.get('content-type')).toContain('text/event-stream');
+}
+
+function cookiesOf(response: Response): string {
+  return response.headers
+    .getSetCookie()
+    .map((cookie) => cookie.split(';')[0])
+    .join('; ');
+}
+
 it('brings everything up, refuses a second start beside it, and ends all of it within 20 s with a stream open', async () => {
   const command = start();
   await command.hasPrinted(READY);
@@ -70,6 +93,7 @@ it('brings everything up, refuses a second start beside it, and ends all of it w
   const health = await fetch(`${settings.publicUrl}/api/health`);
   expect(await health.json()).toMatchObject({ ok: true, database: true, queue: true, worker: true });
 
+  await openStream();
   const beganAtMs = performance.now();
   command.process.kill('SIGTERM');
   expect(await command.ended).toBe(0);
