@@ -7,12 +7,14 @@ import type { ServiceContext } from '../context';
 import { parseInput } from '../parse';
 import { causes, tell } from '../tell';
 import { inTransaction } from '../transaction';
+import { giveBackPrepared } from './give-back-prepared';
 import { lockRig } from './lock-rig';
 import { reloadRigs } from './reload-rigs';
 import { requireStandstill } from './require-standstill';
 
 /**
- * Puts new numbers of a rig in force as its next version.
+ * Puts new numbers of a rig in force as its next version. A lot that has not begun there is asked back: its program
+ * was made with the old ones.
  * @throws EllwandError `rig-busy` while a run is under way: it ends with the numbers it began with.
  */
 export async function publishProfile({
@@ -38,6 +40,7 @@ export async function publishProfile({
     await audit(inner, 'profile.publish', `rig:${rigId}`, { version, reason });
     await tell(inner, { news: 'rig', rigId });
     await causes(inner, { topic: 'dispatch', payload: { because: 'profile published' } });
+    await giveBackPrepared(inner, rig);
     if (rig.agentId) await reloadRigs(inner, rig.agentId);
     return { version };
   });

@@ -8,11 +8,12 @@ import type { ServiceContext } from '../context';
 import { parseInput } from '../parse';
 import { causes, tell } from '../tell';
 import { inTransaction } from '../transaction';
+import { giveBackPrepared } from './give-back-prepared';
 import { lockRig } from './lock-rig';
 import { requireStandstill } from './require-standstill';
 
 /**
- * Takes a rig out of service: it gets no lot and nothing starts on it.
+ * Takes a rig out of service: it gets no lot, gives back one that has not begun, and nothing starts on it.
  * @throws EllwandError `rig-busy` while a run is under way (stop it first), `illegal-step` when it is out already.
  */
 export async function takeOutOfService({
@@ -22,9 +23,10 @@ export async function takeOutOfService({
   ctx: ServiceContext;
   input: unknown;
 }): Promise<void> {
-  const { personId } = authorise(ctx, 'rigs.service');
+  const actor = authorise(ctx, 'rigs.service');
+  const { personId } = actor;
   const { rigId, reason } = parseInput(takeOutOfServiceSchema, input);
-  return inTransaction(ctx, async (inner) => {
+  return inTransaction({ ...ctx, actor }, async (inner) => {
     const rig = await lockRig(inner, rigId);
     if (rig.outOfServiceAt) throw new EllwandError('illegal-step');
     await requireStandstill(inner, rigId);
@@ -32,6 +34,7 @@ export async function takeOutOfService({
       .update(rigs)
       .set({ outOfServiceAt: ctx.now, outOfServiceBy: personId, outOfServiceReason: reason })
       .where(eq(rigs.id, rigId));
+    await giveBackPrepared(inner, rig);
     await audit(inner, 'rig.out-of-service', `rig:${rigId}`, { reason });
     await tell(inner, { news: 'rig', rigId });
     await causes(inner, { topic: 'dispatch', payload: { because: 'rig out of service' } });
