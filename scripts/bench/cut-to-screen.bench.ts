@@ -11,6 +11,7 @@ import { sightingOf } from './cut-to-screen/sighting';
 import { summarise } from './cut-to-screen/summary';
 import { openBusyFloor, type BusyFloor } from './floor/floor';
 import { LENGTH_MM } from './floor/queue-work';
+import { readRigSpeed } from './floor/rig-speed';
 import { readClosings } from './floor/tallies';
 import { readMinutes } from './minutes';
 import { reportResult } from './result';
@@ -68,7 +69,12 @@ async function measure(minutes: number): Promise<void> {
         onScreen: piecesWithin(floor, [...opened, ...shown], fromMs, untilMs),
         withoutBrowser: piecesWithin(floor, heard, fromMs, untilMs),
         relayMs: await relay.delaysMs(),
-        settings: { rigs: floor.rigs.length, minutes, lengthMm: LENGTH_MM, rigSpeed: 2 },
+        settings: {
+          rigs: floor.rigs.length,
+          minutes,
+          lengthMm: LENGTH_MM,
+          rigSpeed: readRigSpeed(floor.dataDir),
+        },
       }),
     );
     await relay.close();

@@ -7,6 +7,7 @@ import { setTimeout as pause } from 'node:timers/promises';
 import { z } from 'zod';
 import { openBusyFloor, type BusyFloor } from './floor/floor';
 import { LENGTH_MM } from './floor/queue-work';
+import { readRigSpeed } from './floor/rig-speed';
 import { familyOf, readProcesses } from './memory/processes';
 import { summarise, type Sample } from './memory/summary';
 import { readMinutes } from './minutes';
@@ -66,7 +67,8 @@ async function measure(minutes: number): Promise<void> {
     console.log(`All rigs are cutting; measuring for ${minutes} min`);
     const untilMs = Date.now() + minutes * 60_000;
     const { samples, emptyMb } = await sampleUntil(untilMs, floor, empty.pid ?? 0);
-    const settings = { minutes, rigs: floor.rigs.length, pieces: sumOf(cut) - before, lengthMm: LENGTH_MM };
+    const work = { pieces: sumOf(cut) - before, lengthMm: LENGTH_MM };
+    const settings = { minutes, rigs: floor.rigs.length, rigSpeed: readRigSpeed(floor.dataDir), ...work };
     reportResult(summarise(samples, emptyMb, settings));
   } finally {
     const gone = once(empty, 'exit');
