@@ -5,6 +5,7 @@ import { acknowledgeAlarm as acknowledgeAlarmService } from '@/lib/services/alar
 import { acknowledgeNotes as acknowledgeNotesService } from '@/lib/services/runs/acknowledge-notes';
 import { beginWorkHold as beginWorkHoldService } from '@/lib/services/runs/begin-work-hold';
 import { clearTray as clearTrayService } from '@/lib/services/runs/clear-tray';
+import { confirmBag as confirmBagService } from '@/lib/services/runs/confirm-bag';
 import { dropRun as dropRunService } from '@/lib/services/runs/drop-run';
 import { endWorkHold as endWorkHoldService } from '@/lib/services/runs/end-work-hold';
 import { goOn as goOnService } from '@/lib/services/runs/go-on';
@@ -70,4 +71,7 @@ export async function acknowledgeAlarm(input: unknown) {
 }
 export async function dropRun(input: unknown) {
   return run(dropRunService, input);
+}
+export async function confirmBag(input: unknown) {
+  return run(confirmBagService, input);
 }

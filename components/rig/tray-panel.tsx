@@ -21,11 +21,22 @@ export function TrayPanel({ run }: { run: RunDto }) {
   const [counts, setCounts] = useState<Record<Kind, string>>({ scrapped: '', sampled: '' });
   const [at, setAt] = useState<Kind>('scrapped');
   const clear = useRunAction('clearTray');
+  const enter = useRunAction('scrapPieces');
   const scrapped = Number(counts.scrapped);
   const sampled = Number(counts.sampled);
   const bagged = run.bagged - scrapped - sampled;
   const set = (kind: Kind) => (text: string) =>
     setCounts((old) => ({ ...old, [kind]: text.replace(/\D/g, '') }));
+  const labelFirst = async () => {
+    const found = [
+      { kind: 'scrap', pieces: scrapped },
+      { kind: 'sample', pieces: sampled },
+    ].filter((entry) => entry.pieces > 0);
+    for (const entry of found) {
+      if (!(await enter.act({ runId: run.id, ...entry, reason: 'found at the tray' }))) return;
+    }
+    router.push(routes.label(run.id));
+  };
   const confirm = async () => {
     if (!(await clear.act({ runId: run.id, scrapped, sampled }))) return;
     // No piece, no bag, no label.
@@ -76,13 +87,18 @@ export function TrayPanel({ run }: { run: RunDto }) {
         </div>
       </section>
       <ActBar
-        problem={clear.problem}
+        problem={clear.problem ?? enter.problem}
         above={<Keypad row label="Pieces" value={counts[at]} onChange={set(at)} lengthMax={4} />}
       >
         <p>The label shows this count. Confirm when the tray is empty and back in its slot.</p>
-        <Button look="ink" size="rig" disabled={clear.busy || bagged < 0} onClick={() => void confirm()}>
-          Tray is empty, make the label
-        </Button>
+        <div className="flex flex-wrap gap-3">
+          <Button size="rig" disabled={enter.busy || bagged <= 0} onClick={() => void labelFirst()}>
+            Label first, then scan it
+          </Button>
+          <Button look="ink" size="rig" disabled={clear.busy || bagged < 0} onClick={() => void confirm()}>
+            Tray is empty, make the label
+          </Button>
+        </div>
       </ActBar>
     </>
   );

@@ -23,6 +23,7 @@ export const RUN_VERBS = [
   'endWorkHold',
   'acknowledgeAlarm',
   'dropRun',
+  'confirmBag',
 ] as const;
 export type RunVerb = (typeof RUN_VERBS)[number];
 

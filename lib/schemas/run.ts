@@ -137,6 +137,10 @@ export const bagDtoSchema = z.object({
   clearedAt: moment,
 });
 
+/** A label to print; not `confirmed`: the pieces still lie in the tray. */
+export const labelDtoSchema = z.object({ bag: bagDtoSchema, confirmed: z.boolean() });
+
 export type RunDto = z.infer<typeof runDtoSchema>;
 export type BagDto = z.infer<typeof bagDtoSchema>;
+export type LabelDto = z.infer<typeof labelDtoSchema>;
 export type CommandOutcome = z.infer<typeof commandOutcomeSchema>;

@@ -3,6 +3,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { bagCode } from '@/lib/fleet/bag-code';
 import type { EventBody } from '@/lib/protocol/events';
 import { readBag } from '@/lib/services/floor/read-bag';
+import { readLabel } from '@/lib/services/floor/read-label';
 import { readRun } from '@/lib/services/floor/read-run';
 import { acknowledgeNotes } from '@/lib/services/runs/acknowledge-notes';
 import { clearTray } from '@/lib/services/runs/clear-tray';
@@ -211,7 +212,13 @@ describe('the count in the bag', () => {
       runId: run.runId,
     });
     const ctx = await floor.as('operator');
+    const printed = await readLabel({ ctx, input: { runId: run.runId } });
+    expect(printed).toMatchObject({
+      confirmed: false,
+      bag: { code, pieces: 5, clearedByName: ctx.actor.name },
+    });
     const bag = await confirmBag({ ctx, input: { code: ` ${code.toLowerCase()} ` } });
+    expect(await readLabel({ ctx, input: { runId: run.runId } })).toEqual({ bag, confirmed: true });
     expect(bag).toMatchObject({ code, pieces: 5 });
     expect(await confirmBag({ ctx, input: { code } })).toEqual(bag);
     await expect(confirmBag({ ctx, input: { code: 'EW-1-1-1-ZZZZ' } })).rejects.toEqual(
