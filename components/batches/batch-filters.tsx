@@ -27,6 +27,12 @@ interface BatchFiltersProps {
 
 function Search({ search, onChange }: { search: string; onChange: BatchFiltersProps['onChange'] }) {
   const [text, setText] = useState(search);
+  const [seen, setSeen] = useState(search);
+  // A link that shows all again empties the field too; a word that is being typed is never touched.
+  if (seen !== search) {
+    setSeen(search);
+    if (search === '') setText('');
+  }
   const timer = useRef<ReturnType<typeof setTimeout>>(undefined);
   const type = (typed: string) => {
     setText(typed);

@@ -2,7 +2,7 @@
 
 import { useQuery } from '@tanstack/react-query';
 import Link from 'next/link';
-import { useRouter } from 'next/navigation';
+import { useSearchParams } from 'next/navigation';
 import { useRights } from '@/components/shell/rights';
 import { LinkButton } from '@/components/ui/button';
 import { PageHead } from '@/components/ui/page-head';
@@ -63,18 +63,25 @@ function Pager({ list, pages }: { list: BatchList; pages: number }) {
 }
 
 interface BatchListViewProps {
+  /** What the server was asked for, and its answer. */
   list: BatchList;
   initial: BatchPage;
   wires: WireDto[];
 }
 
-/** The list of batches as the URL asks for it, kept fresh by the event stream. */
-export function BatchListView({ list, initial, wires }: BatchListViewProps) {
-  const router = useRouter();
+/**
+ * The list of batches as the URL asks for it, kept fresh by the event stream. Filters change the URL at once and by
+ * themselves, so that two changes in one breath both count.
+ */
+export function BatchListView({ list: asked, initial, wires }: BatchListViewProps) {
   const may = useRights();
-  const { data } = useQuery({ ...batchesQuery(list), initialData: initial });
-  const change = (changed: Partial<BatchList>) =>
-    router.replace(hrefOf({ ...list, ...changed, page: 1 }), { scroll: false });
+  const list = batchListSchema.parse(Object.fromEntries(useSearchParams()));
+  const isAsked = hrefOf(list) === hrefOf(asked);
+  const { data = initial } = useQuery({ ...batchesQuery(list), initialData: isAsked ? initial : undefined });
+  const change = (changed: Partial<BatchList>) => {
+    const now = batchListSchema.parse(Object.fromEntries(new URLSearchParams(window.location.search)));
+    window.history.replaceState(null, '', hrefOf({ ...now, ...changed, page: 1 }));
+  };
   return (
     <>
       <PageHead
