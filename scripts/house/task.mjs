@@ -18,11 +18,12 @@ import { Trouble } from './trouble.mjs';
  * @property {AbortSignal} [signal] ends it early
  */
 
-const LINES_SHOWN = 25;
+const LINES_FIRST = 8;
+const LINES_LAST = 20;
 
 /**
  * Runs a task to its end and returns its standard output. It has a process group of its own, so Ctrl-C reaches it only
- * through `signal`. Throws a Trouble with its last lines when it fails.
+ * through `signal`. Throws a Trouble with its first and last lines when it fails.
  * @param {Task} task
  * @returns {Promise<string>}
  */
@@ -52,7 +53,7 @@ export function runTask(task) {
       task.signal?.removeEventListener('abort', stop);
       if (task.signal?.aborted) reject(task.signal.reason);
       else if (code === 0) resolve(out);
-      else reject(new Trouble(`${task.what} (${signal ?? `code ${code}`}).\n${lastLines(all)}`));
+      else reject(new Trouble(`${task.what} (${signal ?? `code ${code}`}).\n${endsOf(all)}`));
     });
 
     /** @param {Buffer} chunk */
@@ -70,9 +71,11 @@ function append(file, chunk) {
   appendFileSync(file, chunk, { mode: 0o600 });
 }
 
-/** @param {string} text */
-function lastLines(text) {
-  return text.trimEnd().split('\n').slice(-LINES_SHOWN).join('\n');
+/** Some programs say what is wrong first, some last. @param {string} text */
+function endsOf(text) {
+  const lines = text.trimEnd().split('\n');
+  if (lines.length <= LINES_FIRST + LINES_LAST) return lines.join('\n');
+  return [...lines.slice(0, LINES_FIRST), '…', ...lines.slice(-LINES_LAST)].join('\n');
 }
 
 /** @param {string} command @returns {string | undefined} its absolute path, looked up in PATH and the system's folders */
