@@ -49,14 +49,21 @@ function NeedLine({ need }: { need: Need }) {
 export function FloorHead({ rigs, waiting }: { rigs: RigDto[]; waiting: WaitingDto }) {
   const { nowMs, timeZone } = useLive();
   const needs = needsOf(rigs);
+  const alarms = needs.filter((need) => need.alarm !== null);
+  const chances = needs.filter((need) => need.alarm === null);
   const sentence = floorSentence(rigs, needs, waiting, (at) => wallClock(at, timeZone, nowMs));
   return (
     <section aria-label="What is to be done" className="page pt-5 pb-4">
       <h1 className="text-[25px] leading-snug font-normal">
         <strong>{sentence.urgent}</strong> {sentence.rest}
       </h1>
-      <ul className={`mt-2 ${needs.length > 4 ? 'gap-x-8 lg:columns-2' : ''}`} aria-label="Who must go where">
-        {needs.map((need) => (
+      <ul className="mt-2" aria-label="Who must go where">
+        {alarms.map((need) => (
+          <NeedLine key={need.key} need={need} />
+        ))}
+      </ul>
+      <ul className={chances.length > 2 ? 'gap-x-8 lg:columns-2' : ''} aria-label="What can be done">
+        {chances.map((need) => (
           <NeedLine key={need.key} need={need} />
         ))}
       </ul>

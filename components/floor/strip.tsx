@@ -26,8 +26,11 @@ export function Strip({ colour, spoolFill, pieces, cut, tray, stale = false }: S
     >
       <Spool colour={colour} fill={spoolFill} />
       <div className="relative h-[52px]">
-        <div className="absolute inset-x-0 top-[13px] -ml-[18px]">
-          <WireLine colour={colour ?? ''} ratio={colour ? (ratio > 0 ? ratio : 0.015) : 0} />
+        <div className="absolute top-[13px] right-full w-[18px]">
+          <WireLine colour={colour ?? ''} ratio={colour ? 1 : 0} />
+        </div>
+        <div className="absolute inset-x-0 top-[13px]">
+          <WireLine colour={colour ?? ''} ratio={colour ? ratio : 0} />
         </div>
         <svg aria-hidden className="absolute inset-x-0 top-0 h-8 w-full overflow-visible">
           <svg x={`${ratio * 100}%`} className="overflow-visible">
