@@ -23,12 +23,14 @@ function NeedLine({ need }: { need: Need }) {
     <li className="flex min-h-11 break-inside-avoid flex-wrap items-center gap-x-3">
       <Link
         href={routes.rig(need.rigId)}
-        className="flex min-h-11 flex-wrap items-center gap-x-3 hover:underline"
+        className="grid min-h-11 grid-cols-[24px_auto] items-center gap-x-3 hover:underline"
       >
-        <span aria-hidden className={`h-4 w-6 shrink-0 ${MARKS[need.mark]}`} />
-        <span className="name">{need.rigName}</span>
-        <span>{need.happened}</span>
-        <span className="text-soft">{need.bring}</span>
+        <span aria-hidden className={`h-4 w-6 ${MARKS[need.mark]}`} />
+        <span className="flex flex-wrap items-baseline gap-x-3">
+          <span className="name">{need.rigName}</span>
+          <span>{need.happened}</span>
+          <span className="text-soft">{need.bring}</span>
+        </span>
       </Link>
       {alarm?.byName ? <span className="text-soft">{alarm.byName} is on it</span> : null}
       {alarm && alarm.byName === null ? (
@@ -47,14 +49,15 @@ function NeedLine({ need }: { need: Need }) {
 
 /** The floor's first lines: what is to be done, then who must go where with what in hand. */
 export function FloorHead({ rigs, waiting }: { rigs: RigDto[]; waiting: WaitingDto }) {
-  const { nowMs, timeZone } = useLive();
+  const { nowMs, timeZone, lost } = useLive();
   const needs = needsOf(rigs);
   const alarms = needs.filter((need) => need.alarm !== null);
   const chances = needs.filter((need) => need.alarm === null);
   const sentence = floorSentence(rigs, needs, waiting, (at) => wallClock(at, timeZone, nowMs));
   return (
     <section aria-label="What is to be done" className="page pt-5 pb-4">
-      <h1 className="text-[25px] leading-snug font-normal">
+      <h1 className={`text-[25px] leading-snug font-normal ${lost ? 'text-soft' : ''}`}>
+        {lost ? 'When last heard: ' : null}
         <strong>{sentence.urgent}</strong> {sentence.rest}
       </h1>
       <ul className="mt-2" aria-label="Who must go where">

@@ -1,6 +1,6 @@
 import { WireSwatch } from '@/components/ui/wire-swatch';
 import type { BagDto } from '@/lib/schemas/run';
-import { fullWireName } from '@/lib/wire/name';
+import { colourName, parseColour } from '@/lib/wire/colour';
 import { toleranceWords } from '@/components/rig/words';
 
 interface BagLabelProps {
@@ -13,6 +13,7 @@ interface BagLabelProps {
 
 /** The label of a bag, 90 × 55 mm, black on white whatever the screen's set. */
 export function BagLabel({ bag, barcodeSvg, at }: BagLabelProps) {
+  const colour = parseColour(bag.wire.colour);
   return (
     <article
       aria-label={`Label of bag ${bag.code}`}
@@ -29,8 +30,8 @@ export function BagLabel({ bag, barcodeSvg, at }: BagLabelProps) {
           {bag.pieces} × {bag.lengthMm} mm
         </p>
         <p>
-          <WireSwatch wire={bag.wire} /> {fullWireName(bag.wire)},{' '}
-          {toleranceWords(bag.toleranceMinusMm, bag.tolerancePlusMm)}
+          <WireSwatch wire={bag.wire} /> {colour ? `${colourName(colour)}, ` : ''}
+          {bag.wire.insulation}, {toleranceWords(bag.toleranceMinusMm, bag.tolerancePlusMm)}
         </p>
         <p>
           {bag.rigName} · blade {bag.bladeLabel ?? 'not entered'} · spool {bag.spoolLabel ?? 'not entered'}

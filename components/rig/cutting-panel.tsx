@@ -3,6 +3,7 @@
 import { useState } from 'react';
 import { Button } from '@/components/ui/button';
 import { Strip } from '@/components/floor/strip';
+import { stateNow } from '@/components/live/freshness';
 import { useLive } from '@/components/live/live-provider';
 import { wallClock } from '@/components/live/time';
 import { useRunAction } from '@/components/runs/use-run-action';
@@ -14,14 +15,15 @@ import { StopButton } from './stop-button';
 
 /** The count, large enough for arm's length, and the strip. */
 export function RunStrip({ rig, run }: { rig: RigDto; run: RunDto }) {
-  const { nowMs, timeZone } = useLive();
+  const { nowMs, timeZone, lost } = useLive();
+  const stale = lost || stateNow(rig, nowMs) === 'silent';
   return (
     <section aria-label="The run" className="border-b border-line py-4">
-      <p className="flex items-baseline gap-3" data-count={run.cut}>
+      <p className={`flex items-baseline gap-3 ${stale ? 'text-soft' : ''}`} data-count={run.cut}>
         <span className="figure text-7xl">{run.cut}</span>
         <span className="text-xl">
-          of {run.pieces} pieces cut
-          {run.state === 'cutting' && run.expectedEndAt ? (
+          of {run.pieces} pieces cut{stale ? ' when it was last heard' : ''}
+          {!stale && run.state === 'cutting' && run.expectedEndAt ? (
             <span className="text-soft"> · done about {wallClock(run.expectedEndAt, timeZone, nowMs)}</span>
           ) : null}
         </span>
@@ -32,6 +34,7 @@ export function RunStrip({ rig, run }: { rig: RigDto; run: RunDto }) {
         pieces={run.pieces}
         cut={run.cut}
         tray={run.bagged}
+        stale={stale}
       />
       <p className="mt-2 text-soft">
         In the tray for the bag: {run.bagged} = {run.cut} cut − {run.scrapped} scrap − {run.sampled} samples −{' '}

@@ -7,12 +7,13 @@ import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, expect, it } from 'vitest';
 import { createVirtualRig, type VirtualRig } from '@/agent/virtual/rig';
 import { repo } from '@/scripts/house/repo.mjs';
-import { AT_A_DESK, openDesk } from '@/tests/support/browser-desk';
+import { AT_A_DESK, AT_THE_RIG, openDesk, signInByPage } from '@/tests/support/browser-desk';
 import { AtRig } from '@/tests/support/browser-rig';
 import { openBrowser } from '@/tests/support/chromium';
 import { startTestHouse, type TestHouse } from '@/tests/support/house';
 
 const RIG = 'Heron';
+const OPERATOR = { email: 'otto@test.example', password: 'wrap seven turns' };
 /** Numbers that fit the virtual rig as it is when nothing is said about it. */
 const PROFILE: Record<string, string> = {
   'Home, mm': '5',
@@ -148,13 +149,13 @@ async function pairAgent(): Promise<void> {
 
 async function addOperator(): Promise<void> {
   await openArea('People');
-  await fill({ Name: 'Otto', 'E-mail': 'otto@test.example', 'First password': 'wrap seven turns' });
+  await fill({ Name: 'Otto', 'E-mail': OPERATOR.email, 'First password': OPERATOR.password });
   await page
     .getByRole('checkbox', { name: /^operator/ })
     .first()
     .check();
   await press('Add', 'Added.');
-  await page.getByText('otto@test.example').waitFor();
+  await page.getByText(OPERATOR.email).waitFor();
 }
 
 async function queueBatch(): Promise<void> {
@@ -184,7 +185,9 @@ it('makes an empty workshop cut its first counted piece, by the app alone', asyn
   await addOperator();
   await queueBatch();
 
-  const bench = await AtRig.open(page, RIG);
+  const operator = await openDesk(browser, { url: house.url, size: AT_THE_RIG });
+  await signInByPage(operator, OPERATOR);
+  const bench = await AtRig.open(operator, RIG);
   await bench.isNow('ready');
   await bench.confirmNotes();
   await bench.start();

@@ -2,9 +2,11 @@ import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, expect, inject, it } from 'vitest';
 import { demoAccount, openSignedIn } from '@/tests/support/browser-desk';
 import { openBrowser } from '@/tests/support/chromium';
+import { runningIn } from '@/tests/support/start-command';
 
 const LOST_WITHIN_MS = 5_000;
 const LOST = 'The link to Ellwand is lost.';
+const RIG = 'Siskin';
 const house = inject('house');
 let browser: Browser;
 
@@ -23,22 +25,50 @@ function operator(): Promise<Page> {
 async function openFloor(page: Page): Promise<void> {
   await page.goto('/');
   await page.getByText('· live').waitFor();
-  await page.locator('[data-rig="Siskin"][data-state="ready"]').waitFor();
+  await isHeard(page);
 }
 
-it('says within 5 s that the link is lost, marks every rig as stale, and takes it back when the link is', async () => {
+function isHeard(page: Page): Promise<void> {
+  return page.locator(`[data-rig="${RIG}"]:not([data-state="silent"])`).waitFor();
+}
+
+/** The page says that the link is lost, in time, and tells no rig's state as if it knew it. */
+async function saysLost(page: Page): Promise<void> {
+  const sinceMs = performance.now();
+  await page.getByRole('alert').filter({ hasText: LOST }).waitFor({ timeout: LOST_WITHIN_MS });
+  expect(performance.now() - sinceMs).toBeLessThan(LOST_WITHIN_MS);
+  await page.getByText('· not live').waitFor();
+  await page.getByText('When last heard:').waitFor();
+  expect(await page.locator('[data-rig]:not([data-state="silent"])').count()).toBe(0);
+}
+
+async function comesBack(page: Page): Promise<void> {
+  await page.getByRole('alert').filter({ hasText: LOST }).waitFor({ state: 'detached' });
+  await isHeard(page);
+}
+
+it('says within 5 s that the network is gone, marks every rig as stale, and comes back by itself', async () => {
   const page = await operator();
   await openFloor(page);
   await page.context().setOffline(true);
-  const cutAtMs = performance.now();
-  await page.getByRole('alert').filter({ hasText: LOST }).waitFor({ timeout: LOST_WITHIN_MS });
-  expect(performance.now() - cutAtMs).toBeLessThan(LOST_WITHIN_MS);
-  expect(await page.locator('[data-rig]:not([data-state="silent"])').count()).toBe(0);
-  await page.getByText('· not live').waitFor();
-
+  await saysLost(page);
   await page.context().setOffline(false);
-  await page.locator('[data-rig="Siskin"][data-state="ready"]').waitFor();
-  await page.getByRole('alert').filter({ hasText: LOST }).waitFor({ state: 'detached' });
+  await comesBack(page);
+  await page.context().close();
+});
+
+it('says within 5 s that the server no longer answers, although the connection stands', async () => {
+  const page = await operator();
+  await openFloor(page);
+  const web = runningIn(house.dataDir).find(({ name }) => name === 'web');
+  if (!web) throw new Error('The house has no web');
+  process.kill(-web.identity.pid, 'SIGSTOP');
+  try {
+    await saysLost(page);
+  } finally {
+    process.kill(-web.identity.pid, 'SIGCONT');
+  }
+  await comesBack(page);
   await page.context().close();
 });
 
@@ -51,12 +81,32 @@ it('reads one event stream for two tabs, and the second goes on when the first i
   await openFloor(first);
   const second = await first.context().newPage();
   await openFloor(second);
-  // A rig is told anew every second: the second tab has news although the first alone reads the stream.
-  await second.getByText('· live').waitFor();
   expect(streams.length).toBe(1);
 
   await first.close();
   await expect.poll(() => streams.length, { timeout: LOST_WITHIN_MS }).toBe(2);
-  await second.getByText('· live').waitFor();
+  await isHeard(second);
   await second.context().close();
+});
+
+it('ends the open page of a person within seconds of their being disabled', async () => {
+  const account = { email: 'nils@ellwand-demo.example', password: 'three blue spools' };
+  const owner = await openSignedIn(browser, house, demoAccount('owner', house));
+  await owner.goto('/setup/people');
+  await owner.getByLabel('Name', { exact: true }).fill('Nils Aarva');
+  await owner.getByLabel('E-mail').fill(account.email);
+  await owner.getByLabel('First password').fill(account.password);
+  const add = owner.locator('form').filter({ has: owner.getByRole('heading', { name: 'Add a person' }) });
+  await add.getByLabel(/^operator/).check();
+  await add.getByRole('button', { name: 'Add' }).click();
+  await owner.getByText('Change Nils Aarva').click();
+
+  const nils = await openSignedIn(browser, house, account);
+  await openFloor(nils);
+  const row = owner.getByRole('listitem').filter({ hasText: account.email });
+  await row.getByRole('button', { name: 'Disable' }).click();
+  await nils.waitForURL((url) => url.pathname === '/sign-in', { timeout: LOST_WITHIN_MS });
+  await nils.goto('/');
+  await nils.waitForURL((url) => url.pathname === '/sign-in');
+  await Promise.all([owner.context().close(), nils.context().close()]);
 });

@@ -71,9 +71,15 @@ describe('roles', () => {
     const rooms = page.getByRole('navigation', { name: 'Rooms' });
     await rooms.getByRole('link', { name: 'Batches' }).waitFor();
     expect(await rooms.getByRole('link', { name: 'Set-up' }).count()).toBe(0);
-    for (const path of ['/batches/upload', '/batches/new', '/setup', '/setup/people']) {
+    for (const path of ['/setup', '/setup/wires', '/setup/people']) {
       await page.goto(path);
-      await page.getByText(ERRORS['not-allowed'].title).first().waitFor();
+      await isRefused(page, 'not-allowed');
+    }
+    for (const path of ['/batches/upload', '/batches/new']) {
+      await page.goto(path);
+      await page.waitForURL((url) => url.pathname === '/batches');
+      await page.getByRole('heading', { level: 1, name: 'Batches' }).waitFor();
+      expect(await page.getByRole('link', { name: /Upload a cut list|New batch/ }).count()).toBe(0);
     }
     await page.context().close();
   });
@@ -135,7 +141,7 @@ describe('a start is refused', () => {
 
   it('while the tray holds the last run: the page asks to empty it and offers no start', async () => {
     await rig.start();
-    await rig.hasCounted(1);
+    await rig.isNow('held');
     await rig.button('Stop this run').click();
     await rig.button('Stop now').click();
     await rig.isNow('tray full');

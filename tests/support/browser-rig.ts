@@ -44,16 +44,22 @@ export class AtRig {
     await this.page.getByText('You have confirmed these notes for this run.').waitFor();
   }
 
-  /** Has the code shown and reads it off the virtual rig's display. */
+  /** What the virtual rig's display reads, once it shows a code other than `before`. */
+  async codeOnDisplay(before?: string): Promise<string> {
+    const display = this.page.getByText(/its display reads/);
+    const shown = display.filter({ hasText: CODE, ...(before ? { hasNotText: before } : {}) });
+    const code = CODE.exec((await shown.textContent()) ?? '')?.[1];
+    if (code === undefined) throw new Error(`${this.name} shows no code`);
+    return code;
+  }
+
+  /** Has a code shown and reads it off the display. */
   async readCode(): Promise<string> {
     const display = this.page.getByText(/its display reads/);
     const before =
       (await display.count()) > 0 ? CODE.exec((await display.textContent()) ?? '')?.[0] : undefined;
     await this.button('Show a code').click();
-    const shown = display.filter({ hasText: CODE, ...(before ? { hasNotText: before } : {}) });
-    const code = CODE.exec((await shown.textContent()) ?? '')?.[1];
-    if (code === undefined) throw new Error(`${this.name} shows no code`);
-    return code;
+    return this.codeOnDisplay(before);
   }
 
   /** Types on one of the page's keypads. */
@@ -64,15 +70,23 @@ export class AtRig {
     }
   }
 
-  /** Proves presence with the code on the display, then presses the button after which something moves. */
+  /** Proves presence with the code where a display is fitted, then presses the button after which something moves. */
   async start(): Promise<void> {
-    await this.type('Code', await this.readCode());
+    await this.provePresence();
     await this.button(/^Trim and/).click();
   }
 
+  /** As `start`, after a pause or a hold. */
   async goOn(): Promise<void> {
-    await this.type('Code', await this.readCode());
+    await this.provePresence();
     await this.button(/^Go on,/).click();
+  }
+
+  private async provePresence(): Promise<void> {
+    const code = this.page.getByLabel('Type the code shown on the rig');
+    const none = this.page.getByText('has no display fitted');
+    await code.or(none).waitFor();
+    if (await code.isVisible()) await this.type('Code', await this.readCode());
   }
 
   /** Enters the same length for every piece that is asked for, key by key. */
@@ -108,10 +122,12 @@ export class AtRig {
     return seen;
   }
 
-  /** Waits until the page counts at least so many pieces. */
+  /** Waits until the page counts at least so many pieces, or asks to measure the last of them. */
   async hasCounted(pieces: number): Promise<void> {
     await this.page.waitForFunction(
-      (wanted) => Number(document.querySelector('[data-count]')?.getAttribute('data-count')) >= wanted,
+      (wanted) =>
+        Number(document.querySelector('[data-count]')?.getAttribute('data-count')) >= wanted ||
+        document.getElementById(`length-${wanted}`) !== null,
       pieces,
     );
   }
