@@ -23,7 +23,7 @@ export interface RigStanding {
 }
 
 /** The agent has nothing of an earlier run under way. `tray-full`: the tray is cleared here, the word is on its way. */
-const IDLE: readonly RunnerState[] = ['idle', 'tray-full'];
+export const IDLE_RUNNERS: readonly RunnerState[] = ['idle', 'tray-full'];
 
 function freeAt({ nowMs, run }: RigStanding): Date | null {
   if (!run || run.pieces < 1) return null;
@@ -62,5 +62,5 @@ export function busyOf(standing: RigStanding): BusyRig | null {
   const run = ofRun(standing);
   if (run) return run;
   // Work that a person took from the rig may still be in its agent's hands.
-  return runner !== null && !IDLE.includes(runner) ? { doing: 'unsettled', freeAt: null } : null;
+  return runner !== null && !IDLE_RUNNERS.includes(runner) ? { doing: 'unsettled', freeAt: null } : null;
 }

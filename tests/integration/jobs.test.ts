@@ -64,6 +64,18 @@ describe('the worker', () => {
     expect(tookMs.toSorted((a, b) => a - b)[1]).toBeLessThan(1_000);
   });
 
+  it('gives a lot within a second of a rig being heard again', async () => {
+    await makeBatch(floor, [lineOf(floor)]);
+    startWorker();
+    await queueIsCarrying();
+    const waits = () => floor.world.query("select 1 from lots where waiting_reason like '%is not heard.'");
+    await eventually(floor.world.url, 'the lot waits', async () => (await waits()).length > 0);
+    const fromMs = performance.now();
+    await keepRigsHeard();
+    await eventually(floor.world.url, 'the lot is given', async () => (await countGiven(floor)).given === 1);
+    expect(performance.now() - fromMs).toBeLessThan(1_000);
+  });
+
   it('answers a burst of wishes without giving anything twice, and leaves no wish open', async () => {
     await keepRigsHeard();
     for (let index = 0; index < 5; index += 1) await makeBatch(floor, [lineOf(floor)]);

@@ -1,11 +1,12 @@
 import { eq, sql } from 'drizzle-orm';
 import { agents } from '@/db/schema/rigs';
 import { isNews, onServerClock } from '@/lib/fleet/report-change';
+import { comesFree } from '@/lib/plan/comes-free';
 import { type Report, type ReportAnswer, reportSchema, type RigReport } from '@/lib/protocol/report';
 import { authoriseAgent } from '../authorise';
 import type { AgentActor, ServiceContext } from '../context';
 import { endAlarms } from '../alarms/end-alarms';
-import { tell } from '../tell';
+import { causes, tell } from '../tell';
 import { inTransaction } from '../transaction';
 import { parseSpoken } from './parse-spoken';
 
@@ -64,6 +65,7 @@ export async function recordReport({
       .where(eq(agents.id, actor.agentId));
     const heard = report.rigs.filter((rig) => rig.port === 'open' && known.has(rig.rigId));
     await endAlarms(inner, { rigIds: heard.map((rig) => rig.rigId), kinds: ['rig silent'] });
+    let freed = false;
     for (const rig of report.rigs) {
       const row = known.get(rig.rigId);
       if (!row) continue;
@@ -72,7 +74,9 @@ export async function recordReport({
           ? { report: row.before, heardAtMs: row.heardBeforeMs }
           : null;
       if (isNews(last, rig, inner.now.getTime())) await tell(inner, { news: 'rig', rigId: rig.rigId });
+      freed ||= comesFree(last, rig, inner.now.getTime());
     }
+    if (freed) await causes(inner, { topic: 'dispatch', payload: { because: 'rig heard' } });
   });
   return { serverAt: ctx.now.toISOString() };
 }
