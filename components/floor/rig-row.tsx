@@ -68,7 +68,7 @@ export function RigRow({ rig }: { rig: RigDto }) {
           <a href={routes.rig(rig.id)} className="name hover:underline">
             {rig.name}
           </a>{' '}
-          <span className="font-reading text-base font-normal text-soft">{rig.bay}</span>
+          <span className="font-sans text-base font-normal text-soft">{rig.bay}</span>
         </h2>
         <p>
           <strong>{stateTitle(rig, state)}</strong>{' '}

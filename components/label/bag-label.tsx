@@ -41,7 +41,7 @@ export function BagLabel({ bag, barcodeSvg, at }: BagLabelProps) {
       </div>
       <div className="grid content-between justify-items-end">
         <div className="w-[24mm]" dangerouslySetInnerHTML={{ __html: barcodeSvg }} />
-        <p className="font-code text-right text-[2.6mm] break-all">{bag.code}</p>
+        <p className="font-mono text-right text-[2.6mm] break-all">{bag.code}</p>
       </div>
     </article>
   );

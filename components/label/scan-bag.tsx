@@ -28,7 +28,7 @@ export function ScanBag({ code }: { code: string }) {
           hint="A scanner types the code and presses Enter."
           autoFocus
           autoComplete="off"
-          className="min-h-16 font-code"
+          className="min-h-16 font-mono"
           value={text}
           onChange={(event) => setText(event.target.value)}
           error={confirm.problem?.title}

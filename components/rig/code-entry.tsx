@@ -25,7 +25,7 @@ export function CodeEntry({ rig, value, onChange }: CodeEntryProps) {
         </label>
         {rig.virtualDisplay ? (
           <p>
-            Virtual rig, its display reads <strong className="font-code">{rig.virtualDisplay}</strong>
+            Virtual rig, its display reads <strong className="font-mono">{rig.virtualDisplay}</strong>
           </p>
         ) : (
           <p className="text-soft">It shows that somebody is standing there.</p>

@@ -11,7 +11,7 @@ export function Log({ page }: { page: RigPageDto }) {
   return (
     <details className="page border-t border-line py-3">
       <summary className="flex min-h-11 items-center text-soft underline">Log of {page.rig.name}</summary>
-      <ol className="font-code text-sm">
+      <ol className="font-mono text-sm">
         {page.log.map((entry, index) => (
           <li key={`${entry.at} ${index}`} className="flex gap-4 border-b border-line py-1">
             <time dateTime={entry.at} className="w-36 shrink-0 text-soft">

@@ -17,12 +17,12 @@ export function Problem({
         <ul className="list-disc pl-5">
           {fields.map((field) => (
             <li key={`${field.path} ${field.message}`}>
-              <span className="font-code text-sm">{field.path}</span> {field.message}
+              <span className="font-mono text-sm">{field.path}</span> {field.message}
             </li>
           ))}
         </ul>
       ) : null}
-      {requestId ? <p className="font-code text-sm text-soft">{requestId}</p> : null}
+      {requestId ? <p className="font-mono text-sm text-soft">{requestId}</p> : null}
     </Notice>
   );
 }

@@ -11,7 +11,7 @@ export function WireSwatch({ wire }: { wire: { gaugeAwg: number; colour: string 
         <rect x="0.5" y="0.5" width="27" height="7" fill={base} stroke={INSULATION_EDGE_HEX} />
         {second ? <path d="M0 4H28" stroke={second} strokeWidth="3" strokeDasharray="5 5" /> : null}
       </svg>
-      <span className="font-code text-[0.95em]">{wireName(wire)}</span>
+      <span className="font-mono text-[0.95em]">{wireName(wire)}</span>
     </span>
   );
 }

@@ -77,6 +77,7 @@ export const runs = pgTable(
     check('runs_tag', sql`${t.tag} between 1 and 99`),
     check('runs_cut', sql`${t.cut} between 0 and ${t.pieces}`),
     index('runs_state').on(t.state),
+    index('runs_lot').on(t.lotId),
   ],
 );
 

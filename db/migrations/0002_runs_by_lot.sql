@@ -1,0 +1,1 @@
+CREATE INDEX "runs_lot" ON "runs" USING btree ("lot_id");
