@@ -17,6 +17,13 @@ function parse(text: string): LiveMessage | null {
   }
 }
 
+/** A refused stream of a session that is over: said as the stream would have said it. */
+async function tellWhenSignedOut(onText: (text: string) => void): Promise<void> {
+  const answer = await fetch('/api/floor', { method: 'HEAD' }).catch(() => undefined);
+  const ended: LiveMessage = { kind: 'session-ended', at: new Date().toISOString() };
+  if (answer?.status === 401) onText(JSON.stringify(ended));
+}
+
 /** Keeps one event stream open and opens it anew when it ends or falls silent, until `signal` aborts. */
 function holdStream(onText: (text: string) => void, signal: AbortSignal): Promise<void> {
   // The lock may be granted just after its page gave up; it must be let go at once for the next one.
@@ -42,7 +49,11 @@ function holdStream(onText: (text: string) => void, signal: AbortSignal): Promis
         guard();
         onText(event.data);
       };
-      source.onerror = again;
+      source.onerror = () => {
+        // A network error leaves it connecting; closed means that the server refused it.
+        if (source?.readyState === EventSource.CLOSED) void tellWhenSignedOut(onText);
+        again();
+      };
     };
     signal.addEventListener('abort', () => {
       source?.close();
