@@ -120,7 +120,7 @@ function counted(at: AgentBench): number[] {
 
 const ALL = Array.from({ length: PIECES }, (_, index) => index + 1);
 
-describe('an agent killed and started again at a port that stays', () => {
+describe('law 2: the rig remembers, when an agent is killed and started again at a port that stays', () => {
   it.each(MOMENTS)('loses and doubles nothing when $name', async (moment) => {
     const { at, run } = await startAndDie(moment, false);
     const closings = at.closings().length;
@@ -139,7 +139,7 @@ describe('an agent killed and started again at a port that stays', () => {
   });
 });
 
-describe('an agent killed and started again at a port that resets the rig', () => {
+describe('laws 2 and 3: an agent killed and started again at a port that resets the rig', () => {
   it.each(MOMENTS)(
     'doubts the piece only if its cut was commanded and not confirmed, when $name',
     async (moment) => {

@@ -8,7 +8,7 @@ afterEach(async () => {
   bench = null;
 });
 
-describe('a run without any web', () => {
+describe('laws 1 and 7 at the rig: a run without any web', () => {
   it('counts exactly the 200 pieces that the jaws severed, each within 0.05 mm', async () => {
     bench = await AgentBench.open();
     bench.startAgent();

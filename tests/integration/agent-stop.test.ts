@@ -35,7 +35,7 @@ function pieces(count: number): Promise<unknown> {
   });
 }
 
-describe('stopping', () => {
+describe('law 8 at the rig: stopping', () => {
   it('works at the rig’s computer while the server is away, and moves no axis afterwards', async () => {
     const run = bench.makeRun({ pieces: 500, lengthMm: 40 });
     await bench.start(run);

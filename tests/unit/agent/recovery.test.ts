@@ -18,7 +18,7 @@ function at(Y: number, E: number, Z: number): PositionReport {
   return { X: 0, Y, Z, E, count: { X: 0, Y: 0, Z: Math.round(Z * 100) } };
 }
 
-describe('where a run stands, by register, feed and cut axis', () => {
+describe('law 2: where a run stands, by register, feed and cut axis', () => {
   const { run } = inThirdPiece();
   // The table of design.md 5, with n = 2.
   it.each([
