@@ -12,6 +12,8 @@ import { endLeftRunning } from './test/left-running.mjs';
 import { addTally, countReport, emptyTally, isGood, tallyLine } from './test/tally.mjs';
 
 const PROJECTS = ['unit', 'integration', 'browser'];
+/** Integration tests mostly wait for rigs and servers: more of them than cores share the time. */
+const WORKERS = /** @type {Record<string, number>} */ ({ unit: 2, integration: 4, browser: 1 });
 const bin = join(repo, 'node_modules', '.bin');
 const stopping = new AbortController();
 const { signal } = stopping;
@@ -79,7 +81,8 @@ async function verify() {
 /** @param {string} project @returns {Promise<Tally>} */
 async function test(project) {
   const report = join(folder, `${project}.json`);
-  const args = ['run', '--project', project, '--reporter=default', '--reporter=json'];
+  const workers = `--maxWorkers=${WORKERS[project] ?? 1}`;
+  const args = ['run', '--project', project, workers, '--reporter=default', '--reporter=json'];
   say(`\nTests: ${project}`);
   try {
     const command = join(bin, 'vitest');
