@@ -11,9 +11,9 @@ import { printTrouble } from './house/trouble.mjs';
 import { endLeftRunning } from './test/left-running.mjs';
 import { addTally, countReport, emptyTally, isGood, tallyLine } from './test/tally.mjs';
 
-const PROJECTS = ['unit', 'integration', 'browser'];
-/** Integration tests mostly wait for rigs and servers: more of them than cores share the time. */
-const WORKERS = /** @type {Record<string, number>} */ ({ unit: 2, integration: 4, browser: 1 });
+const WITH_SERVICES = ['integration', 'browser'];
+/** Unit tests have the other lane beside them; integration tests mostly wait, so more of them than cores share the time. */
+const WORKERS = /** @type {Record<string, number>} */ ({ unit: 1, integration: 4, browser: 1 });
 const bin = join(repo, 'node_modules', '.bin');
 const stopping = new AbortController();
 const { signal } = stopping;
@@ -64,35 +64,45 @@ function readLog(name, error) {
   }
 }
 
-/** Two lanes, for two cores. @returns {Promise<Tally>} */
-async function verify() {
-  const lanes = await Promise.all([
-    check('lint', join(bin, 'eslint'), ['.']),
-    (async () => {
-      const format = await check('format', join(bin, 'prettier'), ['--check', '.']);
-      const types = await check('types', join(bin, 'tsc'), ['--noEmit']);
-      const build = await check('build', process.execPath, [join(repo, 'scripts/build.mjs'), '--for-tests']);
-      return [format, types, build].reduce(addTally);
-    })(),
-  ]);
-  return lanes.reduce(addTally);
+/**
+ * Two lanes, for two cores.
+ * @returns {Promise<Tally>}
+ */
+async function withoutServices() {
+  const lint = async () =>
+    addTally(await check('lint', join(bin, 'eslint'), ['.']), await test('unit', { show: false }));
+  const rest = async () => {
+    const format = await check('format', join(bin, 'prettier'), ['--check', '.']);
+    const types = await check('types', join(bin, 'tsc'), ['--noEmit']);
+    const build = await check('build', process.execPath, [join(repo, 'scripts/build.mjs'), '--for-tests']);
+    return [format, types, build].reduce(addTally);
+  };
+  const lanes = await Promise.all([lint(), rest()]);
+  return [...lanes, await nothingLeft('unit')].reduce(addTally);
 }
 
-/** @param {string} project @returns {Promise<Tally>} */
-async function test(project) {
+/**
+ * @param {string} project @param {{show: boolean}} options whether its words are shown at once or at its end
+ * @returns {Promise<Tally>}
+ */
+async function test(project, { show }) {
   const report = join(folder, `${project}.json`);
+  const logFile = join(folder, `${project}.log`);
   const workers = `--maxWorkers=${WORKERS[project] ?? 1}`;
   const args = ['run', '--project', project, workers, '--reporter=default', '--reporter=json'];
-  say(`\nTests: ${project}`);
+  if (show) say(`\nTests: ${project}`);
   try {
     const command = join(bin, 'vitest');
     const all = [...args, `--outputFile.json=${report}`];
-    await runTask({ what: `${project} tests`, command, args: all, cwd: repo, env, signal, show: true });
-  } catch {
+    await runTask({ what: `${project} tests`, command, args: all, cwd: repo, env, signal, show, logFile });
+  } catch (error) {
     // Which tests failed is in the report, and vitest has printed why.
     signal.throwIfAborted();
+    if (!show) say(readLog(project, error));
   }
-  return addTally(countReport(readReport(report)), await nothingLeft(project));
+  const tally = countReport(readReport(report));
+  say(`${project} tests: ${tallyLine(tally)}`);
+  return tally;
 }
 
 /** @param {string} file @returns {unknown} */
@@ -119,8 +129,11 @@ let total = emptyTally();
 try {
   await ensureNpmPackages({ say, signal });
   await ensureDebianPackages([...servicePackages, chromiumPackage], { say, signal });
-  total = await verify();
-  for (const project of PROJECTS) total = addTally(total, await test(project));
+  total = await withoutServices();
+  for (const project of WITH_SERVICES) {
+    total = addTally(total, await test(project, { show: true }));
+    total = addTally(total, await nothingLeft(project));
+  }
 } catch (error) {
   printTrouble(error);
   total = addTally(total, { ...emptyTally(), failed: 1 });
