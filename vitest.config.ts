@@ -3,6 +3,9 @@ import { defineConfig } from 'vitest/config';
 
 const alias = { '@': fileURLToPath(new URL('.', import.meta.url)).replace(/\/$/, '') };
 
+/** `ELLWAND_WRITE_PICTURES=1 npx vitest run --project browser` takes the README's pictures anew instead of testing. */
+const TAKES_PICTURES = process.env.ELLWAND_WRITE_PICTURES === '1';
+
 /** Unit tests stand beside nothing else: no service, no network. The other projects need `npm test`. */
 export default defineConfig({
   test: {
@@ -30,7 +33,7 @@ export default defineConfig({
         resolve: { alias },
         test: {
           name: 'browser',
-          include: ['tests/browser/**/*.test.ts'],
+          include: [TAKES_PICTURES ? 'tests/browser/**/*.picture.ts' : 'tests/browser/**/*.test.ts'],
           globalSetup: ['tests/support/web-build.ts', 'tests/support/browser-house.ts'],
           testTimeout: 180_000,
           hookTimeout: 120_000,

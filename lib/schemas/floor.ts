@@ -92,7 +92,7 @@ export const liveMessageSchema = z.discriminatedUnion('kind', [
 ]);
 
 /** The server sends a tick at least this often; a browser without one for twice as long says the link is lost. */
-export const LIVE_TICK_MS = 2_000;
+export const LIVE_TICK_MS = 1_500;
 
 export type AlarmDto = z.infer<typeof alarmDtoSchema>;
 export type RigDto = z.infer<typeof rigDtoSchema>;

@@ -3,7 +3,6 @@ import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { touchRig } from '@/tests/support/browser-control';
 import { AT_A_DESK, demoAccount, openSignedIn } from '@/tests/support/browser-desk';
-import { WRITES_PICTURES } from '@/tests/support/browser-pictures';
 import { AtRig } from '@/tests/support/browser-rig';
 import { openBrowser } from '@/tests/support/chromium';
 import { startTestHouse, type TestHouse } from '@/tests/support/house';
@@ -15,7 +14,7 @@ const RIG_SPEED = 3;
 const CUTTING = { Wren: '140.9', Curlew: '63.9', Linnet: '84.5', Plover: '112.7', Siskin: '84.5' };
 
 /** The README's picture of the floor. It changes a file of the repository, so it is taken only when it is asked for. */
-describe.runIf(WRITES_PICTURES)('the picture of the floor', () => {
+describe('the picture of the floor', () => {
   let house: TestHouse;
   let browser: Browser;
   let page: Page;
