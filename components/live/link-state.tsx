@@ -5,8 +5,9 @@ import { useLive } from './live-provider';
 
 /** One word in the head: whether what is shown follows the workshop. */
 export function LinkWord() {
-  const { lost } = useLive();
-  return <span>{lost ? 'not live' : 'live'}</span>;
+  const { lost, joined } = useLive();
+  if (lost) return <span>not live</span>;
+  return <span>{joined ? 'live' : 'joining'}</span>;
 }
 
 /** Across the page while the server is not heard: what is shown is old, and where the stop is. */

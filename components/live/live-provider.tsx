@@ -14,6 +14,8 @@ interface Live {
   nowMs: number;
   /** No word from the server for twice its tick: what is shown is old. */
   lost: boolean;
+  /** The server was heard at least once since the page was opened. */
+  joined: boolean;
   /** The workshop's time zone. */
   timeZone: string;
 }
@@ -28,13 +30,15 @@ export function useLive(): Live {
 }
 
 /** Follows the server's clock and the state of the link; ticks once a second. */
-function useLink(client: QueryClient, serverAt: string): { nowMs: number; lost: boolean } {
-  const [clock, setClock] = useState({ nowMs: Date.parse(serverAt), lost: false });
+function useLink(client: QueryClient, serverAt: string): Omit<Live, 'timeZone'> {
+  const [clock, setClock] = useState({ nowMs: Date.parse(serverAt), lost: false, joined: false });
   useEffect(() => {
     let skewMs = Date.parse(serverAt) - Date.now();
     let heardMs = Date.now();
+    let joined = false;
     const link = openLiveLink((message) => {
       heardMs = Date.now();
+      joined = true;
       skewMs = Date.parse(message.at) - heardMs;
       if (message.kind === 'session-ended') window.location.assign(routes.signIn());
       else applyLive(client, message);
@@ -43,7 +47,10 @@ function useLink(client: QueryClient, serverAt: string): { nowMs: number; lost: 
     const timer = setInterval(() => {
       const nowMs = Date.now() + skewMs;
       const lost = Date.now() - heardMs > LIVE_TICK_MS * 2;
-      setClock((old) => (lost !== old.lost || nowMs - old.nowMs >= 1_000 ? { nowMs, lost } : old));
+      setClock((old) => {
+        const changed = lost !== old.lost || joined !== old.joined;
+        return changed || Math.abs(nowMs - old.nowMs) >= 1_000 ? { nowMs, lost, joined } : old;
+      });
     }, LOOK_MS);
     return () => {
       clearInterval(timer);
@@ -65,8 +72,8 @@ export function LiveProvider({ timeZone, serverAt, children }: LiveProviderProps
   const [client] = useState(
     () => new QueryClient({ defaultOptions: { queries: { staleTime: 5_000, retry: 1 } } }),
   );
-  const { nowMs, lost } = useLink(client, serverAt);
-  const live = useMemo(() => ({ nowMs, lost, timeZone }), [nowMs, lost, timeZone]);
+  const link = useLink(client, serverAt);
+  const live = useMemo(() => ({ ...link, timeZone }), [link, timeZone]);
   return (
     <QueryClientProvider client={client}>
       <LiveContext value={live}>{children}</LiveContext>

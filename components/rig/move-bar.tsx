@@ -45,7 +45,7 @@ export function MoveBar({ page, verb, label, waitsFor, children }: MoveBarProps)
         By pressing this you say that you stand at the rig and have read the notes. Local safety rules and
         qualified people come first.
       </p>
-      <div className="flex flex-wrap gap-3">
+      <div className="ml-auto flex flex-wrap gap-3">
         <Button look="ink" size="rig" disabled={!ready || move.busy} onClick={() => void go()}>
           {move.busy ? 'Asking the rig' : label}
         </Button>

@@ -1,6 +1,7 @@
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, expect, inject, it } from 'vitest';
 import { demoAccount, openSignedIn } from '@/tests/support/browser-desk';
+import { openRelay, type Relay } from '@/tests/support/browser-relay';
 import { openBrowser } from '@/tests/support/chromium';
 import { runningIn } from '@/tests/support/start-command';
 
@@ -11,17 +12,20 @@ const LOST = 'The link to Ellwand is lost.';
 const RIG = 'Siskin';
 const house = inject('house');
 let browser: Browser;
+let cable: Relay;
 
 beforeAll(async () => {
   browser = await openBrowser();
+  cable = await openRelay(house.url);
 });
 
 afterAll(async () => {
   await browser.close();
+  await cable.close();
 });
 
-function operator(): Promise<Page> {
-  return openSignedIn(browser, house, demoAccount('operator', house));
+function operator(url = house.url): Promise<Page> {
+  return openSignedIn(browser, { url }, demoAccount('operator', house));
 }
 
 async function openFloor(page: Page): Promise<void> {
@@ -54,11 +58,11 @@ async function comesBack(page: Page): Promise<void> {
 }
 
 it('says within 5 s that the network is gone, marks every rig as stale, and comes back by itself', async () => {
-  const page = await operator();
+  const page = await operator(cable.url);
   await openFloor(page);
-  await page.context().setOffline(true);
+  cable.cut();
   await saysLost(page);
-  await page.context().setOffline(false);
+  cable.mend();
   await comesBack(page);
   await page.context().close();
 });
@@ -107,19 +111,17 @@ it('ends the open pages of a person within seconds of their being disabled, one 
   await add.getByRole('button', { name: 'Add' }).click();
   await owner.getByText('Change Nils Aarva').click();
 
-  const [live, away] = [
-    await openSignedIn(browser, house, account),
-    await openSignedIn(browser, house, account),
-  ];
+  const live = await openSignedIn(browser, house, account);
+  const away = await openSignedIn(browser, cable, account);
   await openFloor(live);
   await openFloor(away);
-  await away.context().setOffline(true);
+  cable.cut();
   const row = owner.getByRole('listitem').filter({ hasText: account.email });
   await row.getByRole('button', { name: 'Disable' }).click();
   await atSignIn(live);
   await live.goto('/');
   await atSignIn(live);
-  await away.context().setOffline(false);
+  cable.mend();
   await atSignIn(away);
   await Promise.all([owner, live, away].map((page) => page.context().close()));
 });

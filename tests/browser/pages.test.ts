@@ -5,6 +5,7 @@ import { auditPage, RIG_PX } from '@/tests/support/browser-audit';
 import { touchRig } from '@/tests/support/browser-control';
 import { demoAccount, openDesk, openSignedIn } from '@/tests/support/browser-desk';
 import { tabTo } from '@/tests/support/browser-keyboard';
+import { openRelay } from '@/tests/support/browser-relay';
 import { AtRig } from '@/tests/support/browser-rig';
 import { openBrowser } from '@/tests/support/chromium';
 
@@ -112,12 +113,15 @@ describe('at the rig', () => {
   });
 
   it('a page whose link is lost can be read', async () => {
-    await page.goto('/');
-    await page.getByText('· live').waitFor();
-    await page.context().setOffline(true);
-    await page.getByText('The link to Ellwand is lost.').waitFor();
-    expect(await auditPage(page, 'floor link lost')).toEqual([]);
-    await page.context().setOffline(false);
+    const cable = await openRelay(house.url);
+    const far = await openSignedIn(browser, cable, demoAccount('operator', house));
+    await far.goto('/');
+    await far.getByText('· live').waitFor();
+    cable.cut();
+    await far.getByText('The link to Ellwand is lost.').waitFor();
+    expect(await auditPage(far, 'floor link lost')).toEqual([]);
+    await far.context().close();
+    await cable.close();
   });
 });
 
@@ -170,29 +174,50 @@ describe('at a desk', () => {
     expect(await auditPage(page, 'upload problems')).toEqual([]);
     await page.context().close();
   });
+});
+
+describe('the set-up', () => {
+  let page: Page;
+
+  beforeAll(async () => {
+    page = await desk('owner');
+  });
+
+  afterAll(async () => {
+    await page.context().close();
+  });
 
   it.each(['', '/wires', '/spools', '/blades', '/rigs', '/agents', '/people', '/workshop'])(
-    'the set-up page %s can be read and pressed',
+    'its page %s can be read and pressed, with all that it opens',
     async (path) => {
-      const page = await desk('owner');
       await page.goto(`/setup${path}`);
       await page.getByRole('heading', { level: 1 }).waitFor();
       for (const summary of await page.locator('main summary').all()) await summary.click();
       expect(await auditPage(page, `setup${path.replace('/', ' ')}`)).toEqual([]);
-      await page.context().close();
     },
   );
 
-  it('the set-up of one rig can be read and pressed, also with its refusals', async () => {
-    const page = await desk('owner');
+  it('of one rig can be read and pressed, also with its refusals', async () => {
     await page.goto('/setup/rigs');
     await page.getByRole('link', { name: `Set up ${RIG}` }).click();
     await page.getByRole('heading', { level: 1, name: RIG }).waitFor();
     expect(await auditPage(page, 'setup rig')).toEqual([]);
     await page.getByLabel('Cut, mm').fill('');
     await page.getByRole('button', { name: 'Publish the profile' }).click();
-    await page.getByRole('alert').first().waitFor();
+    await page.getByRole('main').getByRole('alert').waitFor();
     expect(await auditPage(page, 'setup rig refused')).toEqual([]);
-    await page.context().close();
   });
+});
+
+it('the audit itself finds a field without a name, faint words, a low button and sideways scrolling', async () => {
+  const page = await openDesk(browser, house);
+  await page.setContent(
+    '<main><input style="width:2000px"><button style="height:20px;color:#aaa;background:#fff">Go</button></main>',
+  );
+  const found = (await auditPage(page, 'broken')).join('\n');
+  for (const what of ['label at input', 'color-contrast at button', 'target too small: BUTTON "Go"']) {
+    expect(found).toContain(what);
+  }
+  expect(found).toContain('scrolls sideways');
+  await page.context().close();
 });

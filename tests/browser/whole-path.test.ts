@@ -58,8 +58,7 @@ it('an operator sees on the floor which rig is ready with it', async () => {
   await signInByPage(operator, demoAccount('operator', house));
   const head = operator.getByRole('region', { name: 'What is to be done' });
   await head.getByRole('heading', { level: 1, name: /rigs? needs? somebody\..* cutting\./ }).waitFor();
-  const who = operator.getByRole('region', { name: 'What is to be done' });
-  await who.getByRole('link', { name: `${RIG} ${LOT} is ready to start` }).click();
+  await head.getByRole('link', { name: `${RIG} ${LOT} is ready to start` }).click();
   await operator.getByRole('heading', { level: 1, name: RIG }).waitFor();
   await operator.getByRole('heading', { level: 2, name: LOT }).waitFor();
 });
