@@ -17,15 +17,13 @@ function isBarrel(path: string): boolean {
   return statements.length > 1 && statements.every((it) => ts.isExportDeclaration(it) && it.moduleSpecifier);
 }
 
-/** Paths in the code spans of a document: words with a slash, or with an ending of ours; NAME stands for any. */
+/** Paths in the code spans of a document: words with a slash, or with an ending of ours. */
 function pathsIn(document: string): string[] {
   const spans = [...textOf(document).matchAll(/`([^`\n]+)`/g)].map((match) => match[1] ?? '');
   const links = [...textOf(document).matchAll(/\]\(([^)#\s]+)\)/g)].map((match) => match[1] ?? '');
   return [...spans, ...links].filter(
     (text) =>
-      !/\bNAME\b/.test(text) &&
-      /^[\w.@()[\]-]+(\/[\w.@()[\]-]+)*\/?$/.test(text) &&
-      /\/|\.(ts|tsx|mjs|md|json|sql|css)$/.test(text),
+      /^[\w.@()[\]-]+(\/[\w.@()[\]-]+)*\/?$/.test(text) && /\/|\.(ts|tsx|mjs|md|json|sql|css)$/.test(text),
   );
 }
 
