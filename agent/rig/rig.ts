@@ -227,7 +227,7 @@ function changed(before: RigState, after: RigState): boolean {
     before.halted !== after.halted ||
     before.challenge !== after.challenge ||
     before.fence !== after.fence ||
-    before.display.shown !== after.display.shown ||
+    before.displayShown !== after.displayShown ||
     (before.workHold === null) !== (after.workHold === null) ||
     before.run?.mode !== run?.mode ||
     before.run?.cut !== run?.cut ||

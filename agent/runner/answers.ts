@@ -1,5 +1,6 @@
 import type { Reply } from '@/agent/dialect/reply';
 import type { Answered } from './counting';
+import { displayText } from './display';
 import { beginSettle, doubtOrHold, enterHold, requireHome } from './holding';
 import { onSettle } from './settle-answers';
 import { faultOf, needsFaultStop, readHeaters, readSwitches, type RunningFault } from './signals';
@@ -39,9 +40,9 @@ function onLetGo(turn: Turn): void {
 }
 
 function onDisplay(turn: Turn, text: string): void {
-  const { display, showing } = turn.state;
-  turn.set({ display: { ...display, shown: text } });
-  if (display.wanted !== text) return;
+  const { showing } = turn.state;
+  turn.set({ displayShown: text });
+  if (displayText(turn.state) !== text) return;
   for (const commandId of showing) turn.done(commandId);
   turn.set({ showing: [] });
 }

@@ -41,12 +41,10 @@ function onMoving(turn: Turn, event: CommandEvent, command: MovingCommand): void
     if (code === 'presence-wrong') countWrongCode(turn, event.code);
     return turn.refuse(command.id, code);
   }
-  const { rigId, taken, profile } = turn.state;
+  const { rigId, taken } = turn.state;
   adoptFence(turn, command.fence);
   turn.note({ note: 'command-taken', rigId, commandId: command.id });
   turn.set({ taken: [...taken, command.id].slice(-TAKEN_MAX), challenge: event.challenge, presence: null });
-  // The code was used: the display says what the rig does. No letter N, which old builds read as a line number.
-  if (profile.fitted.display) turn.set({ display: { ...turn.state.display, wanted: 'CUTS' } });
   if (command.kind === 'start-run') startRun(turn, command);
   else goOn(turn, command);
   turn.done(command.id);
@@ -63,7 +61,6 @@ function countWrongCode(turn: Turn, freshCode: string): void {
 function showCode(turn: Turn, code: string): void {
   turn.set({
     presence: { code, madeMs: turn.nowMs, wrong: 0 },
-    display: { ...turn.state.display, wanted: `CODE ${code}` },
   });
 }
 

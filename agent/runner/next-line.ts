@@ -1,5 +1,6 @@
 import type { ReplyKind } from '@/agent/dialect/reply';
 import type { ProgramStep } from '@/lib/program/steps';
+import { displayText } from './display';
 import { motionBoundMs } from './measures';
 import { stepsOf, type Cursor, type Purpose, type RigState, type Run } from './state';
 
@@ -50,9 +51,9 @@ function pollLine({ profile, polledMs }: RigState, nowMs: number): NextLine | nu
   return null;
 }
 
-function displayLine({ profile, display }: RigState): NextLine | null {
-  const { wanted, shown } = display;
-  if (!profile.fitted.display || wanted === null || wanted === shown) return null;
+function displayLine(state: RigState): NextLine | null {
+  const wanted = displayText(state);
+  if (!state.profile.fitted.display || wanted === null || wanted === state.displayShown) return null;
   return { purpose: { for: 'display', text: wanted }, command: `M117 ${wanted}`, expectedMs: 0, needs: null };
 }
 

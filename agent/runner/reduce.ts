@@ -147,7 +147,7 @@ export function heldRun(given: RunProgram, program: ReadProgram): Run {
 }
 
 function onMet(turn: Turn, firmware: Firmware, bannerSeen: boolean): void {
-  const { rigId, profile, display, workHold } = turn.state;
+  const { rigId, profile, displayShown, workHold } = turn.state;
   turn.set({
     port: 'open',
     portProblem: null,
@@ -156,7 +156,7 @@ function onMet(turn: Turn, firmware: Firmware, bannerSeen: boolean): void {
     signals: unreadSignals(profile),
     polledMs: { switches: 0, heaters: 0 },
     outstanding: null,
-    display: { wanted: null, shown: display.shown === null ? null : '' },
+    displayShown: displayShown === null ? null : '',
     presence: null,
   });
   turn.event({ kind: 'rig-connected', rigId, firmwareName: firmware.name });
@@ -190,7 +190,7 @@ function onLost(turn: Turn, failure: LinkFailure, reason: string): void {
     settle: null,
     showing: [],
     presence: null,
-    display: { wanted: null, shown: null },
+    displayShown: null,
   });
   if (wasOpen && !halted) turn.event({ kind: 'rig-lost', rigId, reason: reason.slice(0, 200) });
   const because = HELD_BECAUSE[failure];

@@ -44,6 +44,6 @@ export function reportOf(state: RigState): RigReport {
     workHold: state.workHold !== null,
     challenge: state.challenge,
     fence: state.fence,
-    virtualDisplay: firmware?.virtual ? state.display.shown : null,
+    virtualDisplay: firmware?.virtual ? state.displayShown : null,
   };
 }

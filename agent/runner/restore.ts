@@ -36,7 +36,7 @@ export function restoreRig({ rigId, profile, fence, challenge, nowMs, memory, he
     taken: memory?.taken ?? [],
     challenge,
     presence: null,
-    display: { wanted: null, shown: null },
+    displayShown: null,
     showing: [],
     workHold: memory?.workHold ? { personId: memory.workHold, answerTo: [] } : null,
     fetching: [],

@@ -91,7 +91,8 @@ export interface RigState {
   readonly taken: readonly string[];
   readonly challenge: string;
   readonly presence: { readonly code: string; readonly madeMs: number; readonly wrong: number } | null;
-  readonly display: { readonly wanted: string | null; readonly shown: string | null };
+  /** What the display was last given; null: nothing since the port opened. */
+  readonly displayShown: string | null;
   /** `show-code` commands that are answered when the display has the code. */
   readonly showing: readonly string[];
   readonly workHold: WorkHold | null;

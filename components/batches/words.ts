@@ -1,6 +1,5 @@
 import type { BatchState } from '@/lib/fleet/batch-state';
 import type { LotDto } from '@/lib/schemas/batches';
-import type { CutListProblem } from '@/lib/wire/cut-list/reading';
 
 export const BATCH_STATE_WORDS: Record<BatchState, string> = {
   draft: 'Draft',
@@ -34,13 +33,7 @@ export function lotWords(lot: LotDto): string {
   }
 }
 
-/** `row 3, length_mm`; the whole file when it is no row's. */
-export function placeWords({ row, column }: Pick<CutListProblem, 'row' | 'column'>): string {
-  if (row === null) return 'the file';
-  return column === null ? `row ${row}` : `row ${row}, ${column}`;
-}
-
-/** `6 Dec`-like due words are the clock's; this says how they stand: overdue only while something is left to do. */
+/** Whether a batch's due time has passed; only while something of it is left to do. */
 export function isOverdue(batch: { dueAt: string | null; state: BatchState }, nowMs: number): boolean {
   const open = batch.state === 'draft' || batch.state === 'queued' || batch.state === 'cutting';
   return open && batch.dueAt !== null && Date.parse(batch.dueAt) < nowMs;

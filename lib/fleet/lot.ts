@@ -15,6 +15,3 @@ export const LOT_TRANSITIONS: Transitions<LotState> = {
   bagged: [],
   withdrawn: [],
 };
-
-/** The states in which a lot belongs to exactly one rig. */
-export const LOT_ON_RIG: readonly LotState[] = ['given', 'running', 'cut'];

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { displayText } from '@/agent/runner/display';
 import { nextLine } from '@/agent/runner/next-line';
 import { needsFaultStop, readHeaters, readSwitches } from '@/agent/runner/signals';
 import { unreadSignals, type RigState, type Run, type RunMode } from '@/agent/runner/state';
@@ -26,8 +27,10 @@ const IDLE_MS = rig.nowMs + 60_000;
 
 const MODES: (RunMode | 'none')[] = ['none', 'holding', 'moving', 'settling', 'paused', 'held', 'ended'];
 
+/** A rig in that mode whose display already says so. */
 function inMode(mode: RunMode | 'none', change: Partial<Run> = {}): RigState {
-  return { ...base, run: mode === 'none' ? null : { ...run, mode, ...change } };
+  const state: RigState = { ...base, run: mode === 'none' ? null : { ...run, mode, ...change } };
+  return { ...state, displayShown: displayText(state) };
 }
 
 /** What is sent until nothing is due any more, each line answered by nothing but its time. */
@@ -41,8 +44,7 @@ function sends(state: RigState): string[] {
     const { purpose } = line;
     if (purpose.for === 'switches') now = { ...now, polledMs: { ...now.polledMs, switches: IDLE_MS } };
     else if (purpose.for === 'heaters') now = { ...now, polledMs: { ...now.polledMs, heaters: IDLE_MS } };
-    else if (purpose.for === 'display')
-      now = { ...now, display: { wanted: purpose.text, shown: purpose.text } };
+    else if (purpose.for === 'display') now = { ...now, displayShown: purpose.text };
     else break;
   }
   return commands;
@@ -52,7 +54,7 @@ const QUIET = ['M119', 'M105', 'M400', 'M114', 'M84', 'M117 CODE 4711'];
 
 describe('what may be sent in which state', () => {
   it.each(MODES)('with a run that is %s: a line of the program only when it moves', (mode) => {
-    const commands = sends({ ...inMode(mode), display: { wanted: 'CODE 4711', shown: null } });
+    const commands = sends({ ...inMode(mode), presence: { code: '4711', madeMs: IDLE_MS, wrong: 0 } });
     const ofProgram = commands.filter((command) => !QUIET.includes(command));
     expect(ofProgram).toEqual(mode === 'moving' ? ['M302 P1'] : []);
     expect(commands).toContain('M119');
@@ -104,6 +106,26 @@ describe('what may be sent in which state', () => {
       expect(sends(inMode(mode, { stillSinceMs, unknown: true }))).not.toContain('M84');
     },
   );
+});
+
+describe('the display', () => {
+  it.each([
+    ['moving', 'CUTS'],
+    ['settling', 'CUTS'],
+    ['paused', 'PAUSED'],
+    ['held', 'HELD'],
+    ['ended', 'TRAY'],
+  ] as const)('says of a run that is %s: %s, and never that it cuts when it does not', (mode, text) => {
+    expect(displayText({ ...inMode(mode), presence: null, displayShown: 'CODE 4711' })).toBe(text);
+    expect(text).not.toContain('N');
+  });
+
+  it('shows the code for as long as one is asked for, and nothing of ours before anybody used it', () => {
+    const presence = { code: '4711', madeMs: IDLE_MS, wrong: 0 };
+    expect(displayText({ ...inMode('held'), presence })).toBe('CODE 4711');
+    expect(displayText({ ...inMode('holding'), presence: null, displayShown: null })).toBeNull();
+    expect(displayText({ ...inMode('holding'), presence: null, displayShown: 'TRAY' })).toBe('READY');
+  });
 });
 
 describe('the signals', () => {
