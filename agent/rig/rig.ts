@@ -3,7 +3,7 @@ import type { Reply, ReplyKind } from '@/agent/dialect/reply';
 import type { OpenPort } from '@/agent/link/port';
 import type { ProgramStore } from '@/agent/programs/store';
 import { reduce, type RigEvent } from '@/agent/runner/reduce';
-import { reportOf } from '@/agent/runner/report';
+import { reportOf, runnerState } from '@/agent/runner/report';
 import type { RigState } from '@/agent/runner/state';
 import type { Effect } from '@/agent/runner/turn';
 import type { Uplink } from '@/agent/uplink/uplink';
@@ -149,7 +149,7 @@ export class Rig {
         const before = this.#state;
         const { state, effects } = reduce(before, event);
         this.#state = state;
-        for (const effect of effects) {
+        for (const effect of lineFirst(effects)) {
           const done = this.#perform(effect);
           if (done) await done;
         }
@@ -218,7 +218,14 @@ export class Rig {
 
 type WithoutTime<Event> = Event extends unknown ? Omit<Event, 'nowMs'> : never;
 
-/** Whether the server has something to learn; a reading that is only newer waits for the next second. */
+/** A line waits for notes alone; where there is none it goes out first, and what was learnt is written meanwhile. */
+function lineFirst(effects: readonly Effect[]): readonly Effect[] {
+  if (effects.some((effect) => effect.do === 'note')) return effects;
+  const isLine = (effect: Effect) => effect.do === 'send' || effect.do === 'interrupt';
+  return [...effects.filter(isLine), ...effects.filter((effect) => !isLine(effect))];
+}
+
+/** Whether the server has something to learn; pieces go up as events, and a newer reading waits a second. */
 function changed(before: RigState, after: RigState): boolean {
   if (before === after) return false;
   const { run, signals } = after;
@@ -229,12 +236,9 @@ function changed(before: RigState, after: RigState): boolean {
     before.fence !== after.fence ||
     before.displayShown !== after.displayShown ||
     (before.workHold === null) !== (after.workHold === null) ||
-    before.run?.mode !== run?.mode ||
-    before.run?.cut !== run?.cut ||
+    before.run?.order.runId !== run?.order.runId ||
     before.run?.hold !== run?.hold ||
-    before.run?.cursor.part !== run?.cursor.part ||
-    before.run?.pause !== run?.pause ||
-    before.run?.stop !== run?.stop ||
+    runnerState(before.run) !== runnerState(run) ||
     before.signals.guard.reading !== signals.guard.reading ||
     before.signals.wire.reading !== signals.wire.reading ||
     before.signals.heater.reading !== signals.heater.reading

@@ -7,7 +7,8 @@ function movingState({ cursor, pause }: Run): RunnerState {
   return cursor.part === 'trim' || cursor.part === 'register' ? 'trimming' : 'cutting';
 }
 
-function runnerState(run: Run | null): RunnerState {
+/** What the run does, in the words of the protocol. */
+export function runnerState(run: Run | null): RunnerState {
   switch (run?.mode) {
     case undefined:
       return 'idle';

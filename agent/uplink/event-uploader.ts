@@ -5,7 +5,7 @@ import { backOffMs, slowBackOffMs } from './back-off';
 import type { Teller, Topic } from './notices';
 import { callServer, type Server } from './server-call';
 import { uploadStep, type UploadStep } from './upload-step';
-import { pauseUntil, type Bell } from './waiting';
+import { GATHER_MS, pauseUntil, type Bell } from './waiting';
 
 const UPLOAD_TIMEOUT_MS = 10_000;
 
@@ -30,6 +30,7 @@ export async function uploadEvents(parts: Parts): Promise<void> {
     if (next > source.lastSequence) {
       if (!bell) return;
       await bell.wait();
+      await pauseUntil(server.clock, GATHER_MS, server.closing);
       continue;
     }
     const step = await sendFrom(parts, next);

@@ -5,7 +5,7 @@ import type { Teller } from './notices';
 import { callServer, type Server } from './server-call';
 import type { SkewMeter } from './skew';
 import { isSlow } from './upload-step';
-import { pauseUntil, type Bell } from './waiting';
+import { GATHER_MS, pauseUntil, type Bell } from './waiting';
 
 /** Changes closer together than this go up in one report. */
 const REPORT_GAP_MS = 50;
@@ -34,6 +34,7 @@ export async function reportRigs(parts: Parts): Promise<void> {
     if (closing.aborted) return;
     const restMs = REPORT_EVERY_MS - (clock.nowMs() - sentMs);
     if (restMs > 0) await parts.bell.wait({ clock, ms: restMs });
+    await pauseUntil(clock, GATHER_MS, closing);
   }
 }
 

@@ -29,7 +29,7 @@ export class Coalescer {
 
   add(key: string): void {
     this.#keys.add(key);
-    this.#schedule(Math.max(0, this.#lastMs + this.gapMs - this.timing.nowMs()));
+    this.#schedule(this.#leftMs());
   }
 
   #schedule(ms: number): void {
@@ -42,15 +42,20 @@ export class Coalescer {
     const keys = [...this.#keys];
     this.#keys.clear();
     this.#lastMs = this.timing.nowMs();
-    let restMs = this.gapMs;
+    let failed = false;
     try {
       await this.flush(keys);
     } catch (cause) {
       for (const key of keys) this.#keys.add(key);
-      restMs = RETRY_MS;
+      failed = true;
       this.onFailed(cause);
     }
     this.#scheduled = false;
-    if (this.#keys.size > 0) this.#schedule(restMs);
+    if (this.#keys.size > 0) this.#schedule(failed ? RETRY_MS : this.#leftMs());
+  }
+
+  /** Of the gap since the last handing on began. */
+  #leftMs(): number {
+    return Math.max(0, this.#lastMs + this.gapMs - this.timing.nowMs());
   }
 }

@@ -116,12 +116,14 @@ function rigDto(row: Row, run: RunDto | null, standing: AlarmDto[], now: Date): 
 export async function selectRigs(ctx: ServiceContext, rigIds?: readonly string[]): Promise<RigDto[]> {
   if (rigIds?.length === 0) return [];
   const ids = rigIds ? [...rigIds] : null;
-  const rows = await select(ctx)
-    .where(ids ? inArray(rigs.id, ids) : undefined)
-    .orderBy(asc(rigs.benchOrder), asc(rigs.name));
   const onRig = inArray(runs.state, [...RUN_ACTIVE, 'released']);
-  const current = await selectRuns(ctx, and(onRig, ids ? inArray(runs.rigId, ids) : undefined));
-  const standing = await selectStandingAlarms(ctx, ids ? inArray(alarms.rigId, ids) : undefined);
+  const [rows, current, standing] = await Promise.all([
+    select(ctx)
+      .where(ids ? inArray(rigs.id, ids) : undefined)
+      .orderBy(asc(rigs.benchOrder), asc(rigs.name)),
+    selectRuns(ctx, and(onRig, ids ? inArray(runs.rigId, ids) : undefined)),
+    selectStandingAlarms(ctx, ids ? inArray(alarms.rigId, ids) : undefined),
+  ]);
   const runOf = new Map(current.map((run) => [run.rigId, run]));
   return rows.map((row) =>
     rigDto(
