@@ -9,6 +9,12 @@ const configSchema = z.strictObject({
     .transform((address) => address.replace(/\/+$/, '')),
   dataDir: z.string({ error: 'must name the folder in which the agent keeps its journal' }).min(1),
   pairingCode: z.string().min(8, 'must be the code from the set-up page, at least 8 characters').optional(),
+  /** How many times as fast the agent waits. Above 1 it serves virtual rigs alone. */
+  clockSpeed: z
+    .number({ error: 'must be a number from 1, and only for virtual rigs' })
+    .min(1, 'must be at least 1')
+    .max(1_000, 'must be at most 1000')
+    .default(1),
   rigs: z
     .array(
       z.strictObject({

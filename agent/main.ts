@@ -2,9 +2,10 @@
 import { randomBytes, randomInt, randomUUID } from 'node:crypto';
 import { join } from 'node:path';
 import { Command } from 'commander';
-import { systemClock } from './clock';
+import { scaledClock, type Clock } from './clock';
 import { ConfigError, loadConfig, type AgentConfig } from './config';
 import { Fleet, type BoundRig } from './fleet/fleet';
+import { objectionAt } from './fleet/objection';
 import { openJournal } from './journal/journal';
 import { JournalError } from './journal/errors';
 import { openSerialPort } from './link/serial-port';
@@ -26,14 +27,17 @@ import type { BoundRigs } from '@/lib/protocol/pairing';
 
 const CHALLENGE_BYTES = 18;
 
-const clock = systemClock();
 const random = () => Math.random();
 const randomChallenge = () => randomBytes(CHALLENGE_BYTES).toString('base64url');
 const randomCode = () => String(randomInt(10_000)).padStart(4, '0');
 const say = (text: string) => console.log(text);
 
 /** What only a person can mend ends the agent; while the server is away it is asked again. */
-async function untilReached<Value>(call: () => Promise<Value>, closing: AbortSignal): Promise<Value | null> {
+async function untilReached<Value>(
+  call: () => Promise<Value>,
+  clock: Clock,
+  closing: AbortSignal,
+): Promise<Value | null> {
   for (let tries = 1; !closing.aborted; tries += 1) {
     try {
       return await call();
@@ -50,11 +54,12 @@ async function untilReached<Value>(call: () => Promise<Value>, closing: AbortSig
 async function boundRigs(
   config: AgentConfig,
   uplink: Uplink,
+  clock: Clock,
   closing: AbortSignal,
 ): Promise<BoundRigs | null> {
   const kept = await loadCachedRigs(config.dataDir);
   try {
-    const rigs = await (kept ? uplink.fetchRigs() : untilReached(() => uplink.fetchRigs(), closing));
+    const rigs = await (kept ? uplink.fetchRigs() : untilReached(() => uplink.fetchRigs(), clock, closing));
     if (rigs) await saveCachedRigs(config.dataDir, rigs);
     return rigs;
   } catch (error) {
@@ -66,6 +71,7 @@ async function boundRigs(
 
 async function run(configPath: string, closing: AbortController): Promise<void> {
   const config = await loadConfig(configPath);
+  const clock = scaledClock(config.clockSpeed);
   const { journal, history, damaged } = await openJournal({
     dir: join(config.dataDir, 'journal'),
     randomId: randomUUID,
@@ -78,6 +84,7 @@ async function run(configPath: string, closing: AbortController): Promise<void> 
   await recorder.event({ kind: 'agent-started', software: SOFTWARE }, clock.date());
   const identity = await untilReached(
     () => obtainIdentity({ ...config, software: SOFTWARE, clock, fetch, closing: closing.signal }),
+    clock,
     closing.signal,
   );
   if (!identity) return journal.close();
@@ -109,6 +116,7 @@ async function run(configPath: string, closing: AbortController): Promise<void> 
       path: port,
       openPort: openSerialPort,
       clock,
+      objection: objectionAt(config.clockSpeed),
       random,
       randomChallenge,
       randomCode,
@@ -124,13 +132,13 @@ async function run(configPath: string, closing: AbortController): Promise<void> 
   const fleet: Fleet = new Fleet({ config, uplink, date: () => clock.date(), startRig, say });
   const stopSocket = await openStopSocket(config.dataDir, (rig) => fleet.stop(rig));
   uplink.onCommand((command) => fleet.command(command));
-  const rigs = await boundRigs(config, uplink, closing.signal);
+  const rigs = await boundRigs(config, uplink, clock, closing.signal);
   if (rigs) {
     await fleet.bind(rigs);
     if (damaged) await journal.settleDamage();
     uplink.start();
     say(`The agent works for ${config.server}.`);
-    await reportUntilClosed(fleet, closing.signal);
+    await reportUntilClosed(fleet, clock, closing.signal);
   }
   await fleet.close();
   await uplink.close();
@@ -139,7 +147,7 @@ async function run(configPath: string, closing: AbortController): Promise<void> 
 }
 
 /** Readings grow old by themselves: they are told again every second, changes at once. */
-async function reportUntilClosed(fleet: Fleet, closing: AbortSignal): Promise<void> {
+async function reportUntilClosed(fleet: Fleet, clock: Clock, closing: AbortSignal): Promise<void> {
   while (!closing.aborted) {
     await pauseUntil(clock, 1_000, closing);
     fleet.report();

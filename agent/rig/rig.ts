@@ -9,7 +9,7 @@ import type { Effect } from '@/agent/runner/turn';
 import type { Uplink } from '@/agent/uplink/uplink';
 import type { Profile } from '@/lib/program/profile';
 import type { Command } from '@/lib/protocol/commands';
-import type { RigReport } from '@/lib/protocol/report';
+import type { Firmware, RigReport } from '@/lib/protocol/report';
 import { fetchProgram } from './program';
 import type { Recorder } from './recorder';
 import { createSession, type Session } from './session';
@@ -26,6 +26,8 @@ export interface RigParts {
   path: string;
   openPort: OpenPort;
   clock: Clock;
+  /** Why this agent does not serve a firmware that it could speak to; null: it does. */
+  objection: (firmware: Firmware) => string | null;
   random: () => number;
   /** A new challenge: 16 to 64 characters nobody can guess. */
   randomChallenge: () => string;
@@ -59,6 +61,7 @@ export class Rig {
       serial: () => this.#state.profile.serial,
       openPort: parts.openPort,
       clock: parts.clock,
+      objection: parts.objection,
       random: parts.random,
       events: {
         opening: () => this.#dispatch({ type: 'opening' }),

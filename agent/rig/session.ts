@@ -2,7 +2,7 @@ import type { Clock } from '@/agent/clock';
 import type { Reply } from '@/agent/dialect/reply';
 import { createConversation, type Conversation } from '@/agent/link/conversation';
 import type { LinkFailure } from '@/agent/link/exchange';
-import { createEar, greet, type Ear } from '@/agent/link/greet';
+import { createEar, greet, type Ear, type Greeting } from '@/agent/link/greet';
 import type { OpenPort, Port } from '@/agent/link/port';
 import type { Firmware } from '@/lib/protocol/report';
 
@@ -27,6 +27,8 @@ export interface SessionParts {
   serial: () => { baudRate: number; resetsOnOpen: boolean };
   openPort: OpenPort;
   clock: Clock;
+  /** Why this agent does not serve a firmware that it could speak to; null: it does. */
+  objection: (firmware: Firmware) => string | null;
   /** In [0, 1). */
   random: () => number;
   events: SessionEvents;
@@ -140,7 +142,7 @@ class PortSession implements Session {
     let outcome: 'met' | 'stranger' | 'unreachable' = 'unreachable';
     let resets = this.parts.serial().resetsOnOpen;
     while (!this.#closed) {
-      const greeting = await greet(conversation, this.#ear, clock, resets);
+      const greeting = this.#admit(await greet(conversation, this.#ear, clock, resets));
       if (greeting.outcome === 'failed' && greeting.failure === 'reset') continue;
       if (greeting.outcome !== 'met') {
         outcome = greeting.outcome === 'stranger' ? 'stranger' : 'unreachable';
@@ -164,6 +166,11 @@ class PortSession implements Session {
     await port.close();
     this.#port = null;
     return outcome;
+  }
+
+  #admit(greeting: Greeting): Greeting {
+    const reason = greeting.outcome === 'met' ? this.parts.objection(greeting.firmware) : null;
+    return reason === null ? greeting : { outcome: 'stranger', reason };
   }
 
   /** Waits through a halt, which only a reset or an unplugging ends. */

@@ -8,6 +8,7 @@ import { join } from 'node:path';
 import { parseArgs } from 'node:util';
 import { systemClock } from '@/agent/clock';
 import { loadConfig } from '@/agent/config';
+import { objectionAt } from '@/agent/fleet/objection';
 import { Fleet } from '@/agent/fleet/fleet';
 import { openJournal } from '@/agent/journal/journal';
 import { openSerialPort } from '@/agent/link/serial-port';
@@ -68,6 +69,7 @@ async function runTimed(configPath: string, traffic: Passed[]): Promise<void> {
         path,
         openPort: watchPort(openSerialPort, (passed) => traffic.push(passed)),
         clock,
+        objection: objectionAt(1),
         random,
         randomChallenge,
         randomCode,

@@ -36,6 +36,7 @@ describe('the configuration of an agent', () => {
       server: 'http://127.0.0.1:3000',
       dataDir: join(path, '..', 'state'),
       pairingCode: 'ABCD-1234',
+      clockSpeed: 1,
       rigs: [
         { rig: 'Rig 1', port: '/dev/ttyUSB0' },
         { rig: 'Rig 2', port: '/dev/ttyUSB1' },
@@ -49,6 +50,7 @@ describe('the configuration of an agent', () => {
     ['a port given twice', GOOD.replace('USB1', 'USB0'), 7, 'rigs.1.port'],
     ['a rig given twice', GOOD.replace('Rig 2', 'Rig 1'), 7, 'rigs.1.rig'],
     ['a misspelt name', GOOD.replace('pairingCode', 'pairingcode'), 4, 'pairingcode'],
+    ['a clock that is slow', GOOD.replace('"rigs"', '"clockSpeed": 0.5,\n"rigs"'), 5, 'clockSpeed'],
     ['a missing port', GOOD.replace(', "port": "/dev/ttyUSB1"', ''), 7, 'rigs.1.port'],
   ])('names the line and the place of %s', async (_what, text, line, path) => {
     expect(await problemsIn(text)).toEqual([expect.objectContaining({ line, path })]);
