@@ -3,19 +3,29 @@ import { readTemperature, type TemperatureReport } from './temperature';
 
 export type Refusal = 'cold' | 'long' | 'unknown' | 'invalid';
 
+export interface SwitchReading {
+  name: string;
+  triggered: boolean;
+}
+
 /** One received line as a typed event; `text` is the line as it came. */
 export type Reply = { text: string } & (
   | { kind: 'ok'; line: number | null; temperature: TemperatureReport | null }
   | { kind: 'resend'; line: number }
-  | { kind: 'error' }
+  /** A numbered line that is not carried out: it was taken before, or it is not the one asked for. */
+  | { kind: 'skip'; line: number }
+  /** `lastLine`: the last line that the firmware says it has. */
+  | { kind: 'error'; lastLine: number | null }
   | { kind: 'halted' }
   | { kind: 'start' }
   | { kind: 'busy' }
   | { kind: 'wait' }
   | { kind: 'position'; position: PositionReport }
-  | { kind: 'temperature'; temperature: TemperatureReport }
-  | { kind: 'switches' }
-  | { kind: 'switch'; name: string; triggered: boolean }
+  /** `temperature` null: the firmware says that it has no sensor. */
+  | { kind: 'temperature'; temperature: TemperatureReport | null }
+  /** The switches are told: on this line, or on lines of their own after it. */
+  | { kind: 'switches'; told: readonly SwitchReading[] }
+  | ({ kind: 'switch' } & SwitchReading)
   | { kind: 'switch-hit' }
   | { kind: 'refusal'; refusal: Refusal }
   | { kind: 'action'; action: string }
@@ -36,9 +46,19 @@ const REFUSALS: readonly [RegExp, Refusal][] = [
 
 const DEAD = /^(printer halted|printer stopped due to errors|kill\(\) called)/i;
 
+/** A reset may cut a line, so that its `start` is glued to the rest of it; the lines after it tell as well. */
+const BEGUN_ANEW: readonly RegExp[] = [
+  /^(?!\/\/|Error:|!!)(?:.*[^e])?start\s*$/,
+  /^Marlin \d/,
+  /^(?:Info:|echo:)?\s*(?:PowerUp|(?:External|Brown out|Watchdog|Software) Reset)\s*$/i,
+];
+
 function readError(text: string): Reply {
   const said = text.replace(/^(Error:|!!)\s*/i, '');
-  return { text, kind: DEAD.test(said) ? 'halted' : 'error' };
+  if (DEAD.test(said)) return { text, kind: 'halted' };
+  if (/^no thermistors/i.test(said)) return { text, kind: 'temperature', temperature: null };
+  const last = /\bLast Line: (\d+)\s*$/.exec(said)?.[1];
+  return { text, kind: 'error', lastLine: last === undefined ? null : Number(last) };
 }
 
 function readEcho(text: string): Reply {
@@ -54,7 +74,7 @@ function readReport(text: string): Reply | null {
   if (position) return { text, kind: 'position', position };
   const endstop = /^([a-z]\d?_(?:min|max|probe)|z_probe|filament\d?): ?(open|TRIGGERED)$/.exec(text.trim());
   if (endstop) return { text, kind: 'switch', name: endstop[1] ?? '', triggered: endstop[2] === 'TRIGGERED' };
-  if (/^Reporting endstop status/i.test(text)) return { text, kind: 'switches' };
+  if (/^Reporting endstop status/i.test(text)) return { text, kind: 'switches', told: [] };
   if (/^\s*[TB]\d?:/.test(text)) {
     const temperature = readTemperature(text);
     if (temperature) return { text, kind: 'temperature', temperature };
@@ -79,7 +99,7 @@ export function readReply(text: string): Reply {
   }
   const resend = /^(?:Resend:\s*|rs\s+N?)(\d+)\s*$/i.exec(text);
   if (resend) return { text, kind: 'resend', line: Number(resend[1]) };
-  if (/^start\s*$/.test(text)) return { text, kind: 'start' };
+  if (BEGUN_ANEW.some((pattern) => pattern.test(text))) return { text, kind: 'start' };
   if (/^wait\s*$/.test(text)) return { text, kind: 'wait' };
   if (/^(Error:|!!)/i.test(text)) return readError(text);
   if (/^\/\/\s*action:/.test(text)) {

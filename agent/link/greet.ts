@@ -1,5 +1,6 @@
 import { pause, type Clock } from '@/agent/clock';
-import { identify, refusalOfStranger, type Identity } from '@/agent/dialect/identity';
+import { dialectNamed, greetingDialect } from '@/agent/dialect/choose';
+import { identify, refusalOfStranger } from '@/agent/dialect/identity';
 import type { Reply } from '@/agent/dialect/reply';
 import type { Firmware } from '@/lib/protocol/report';
 import type { Conversation } from './conversation';
@@ -10,6 +11,8 @@ const BANNER_MS = 3_000;
 /** After `start` come version and settings lines; talking begins when they have ended. */
 const BANNER_QUIET_MS = 500;
 const NEWLINE_MS = 100;
+/** What a firmware can do may be told after the ok of `M115`. */
+const CAPABILITIES_MS = 200;
 const GREETING_MS = 10_000;
 
 export type Greeting =
@@ -23,6 +26,9 @@ export interface Ear {
   readonly bannerSeen: boolean;
   readonly heardAtMs: number;
   readonly strange: string | null;
+  /** Whether the board called itself Marlin when it booted. */
+  readonly marlinBanner: boolean;
+  readonly capabilities: Readonly<Record<string, boolean>>;
   /** Resolves when `start` was heard, or after `ms`. */
   banner(ms: number): Promise<void>;
 }
@@ -31,6 +37,8 @@ export function createEar(clock: Clock): Ear {
   let bannerSeen = false;
   let heardAtMs = clock.nowMs();
   let strange: string | null = null;
+  let marlinBanner = false;
+  const capabilities: Record<string, boolean> = {};
   let onBanner: (() => void) | null = null;
   return {
     get bannerSeen() {
@@ -42,9 +50,15 @@ export function createEar(clock: Clock): Ear {
     get strange() {
       return strange;
     },
+    get marlinBanner() {
+      return marlinBanner;
+    },
+    capabilities,
     hear(reply) {
       heardAtMs = clock.nowMs();
       strange ??= refusalOfStranger(reply.text);
+      marlinBanner ||= /^(?:echo:\s*)?Marlin\b/.test(reply.text);
+      if (reply.kind === 'capability') capabilities[reply.name] = reply.has;
       if (reply.kind !== 'start') return;
       bannerSeen = true;
       onBanner?.();
@@ -73,18 +87,10 @@ async function untilQuiet(clock: Clock, ear: Ear): Promise<void> {
   }
 }
 
-function identityOf(replies: readonly Reply[]): Identity | null {
-  const named = replies.find((reply) => reply.kind === 'identity');
-  if (!named) return null;
-  const capabilities = Object.fromEntries(
-    replies.flatMap((reply) => (reply.kind === 'capability' ? [[reply.name, reply.has] as const] : [])),
-  );
-  return identify(named.text, capabilities);
-}
-
 /**
- * From an open port to a firmware that is known and counts lines: wait for its start or wake it with a newline,
- * `N0 M110 N0`, `M115`. An ok that came late for a line of an earlier sender is not taken for one of these.
+ * From an open port to a firmware that is known, counts lines and is spoken to in its own dialect: wait for its start
+ * or wake it with a newline, `N0 M110 N0`, `M115`. An ok that came late for a line of an earlier sender is not taken
+ * for one of these.
  */
 export async function greet(
   conversation: Conversation,
@@ -98,16 +104,26 @@ export async function greet(
     await pause(clock, NEWLINE_MS);
   }
   await untilQuiet(clock, ear);
+  conversation.speak(greetingDialect);
   const numbered = await conversation.ask('M110 N0', { line: 0, expectedMs: GREETING_MS });
   if (numbered.outcome === 'failed') return strangerOr(ear, numbered.failure);
   for (let attempt = 0; attempt < 3; attempt += 1) {
     const told = await conversation.ask('M115', { expectedMs: GREETING_MS, needs: 'identity' });
     if (told.outcome === 'failed') return strangerOr(ear, told.failure);
-    const identity = identityOf(told.replies);
-    if (identity?.known) return { outcome: 'met', firmware: identity.firmware, bannerSeen: ear.bannerSeen };
-    if (identity) return { outcome: 'stranger', reason: identity.reason };
+    const named = told.replies.find((reply) => reply.kind === 'identity');
+    if (!named) continue;
+    if (Object.keys(ear.capabilities).length === 0) await pause(clock, CAPABILITIES_MS);
+    return judge(conversation, ear, named.text);
   }
   return strangerOr(ear, 'out-of-step');
+}
+
+function judge(conversation: Conversation, ear: Ear, named: string): Greeting {
+  const { bannerSeen, marlinBanner, capabilities } = ear;
+  const identity = identify(named, { ...capabilities }, marlinBanner);
+  if (!identity.known) return { outcome: 'stranger', reason: identity.reason };
+  conversation.speak(dialectNamed(identity.firmware.dialect));
+  return { outcome: 'met', firmware: identity.firmware, bannerSeen };
 }
 
 function strangerOr(ear: Ear, failure: LinkFailure): Greeting {

@@ -24,7 +24,7 @@ export interface SessionEvents {
 export interface SessionParts {
   path: string;
   /** Asked at each opening: a new profile may have come. */
-  serial: () => { baudRate: number; resetsOnOpen: boolean };
+  serial: () => { baudRate: number; resetsOnOpen: boolean; unnumbered?: boolean };
   openPort: OpenPort;
   clock: Clock;
   /** Why this agent does not serve a firmware that it could speak to; null: it does. */
@@ -134,10 +134,12 @@ class PortSession implements Session {
     this.#ear = createEar(clock);
     this.#ending = createEnding();
     let talking = false;
-    const conversation = createConversation(port, clock, (reply) => {
+    const onReply = (reply: Reply) => {
       this.#ear.hear(reply);
       if (talking) this.#hear(reply);
-    });
+    };
+    const numbered = this.parts.serial().unnumbered !== true;
+    const conversation = createConversation(port, clock, onReply, { numbered });
     port.onClose(() => this.#ending.end('closed'));
     let outcome: 'met' | 'stranger' | 'unreachable' = 'unreachable';
     let resets = this.parts.serial().resetsOnOpen;

@@ -12,9 +12,10 @@ export function readSwitches(
   replies: readonly Reply[],
   readAt: string,
 ): Signals {
-  const told = new Map(
-    replies.flatMap((reply) => (reply.kind === 'switch' ? [[reply.name, reply.triggered] as const] : [])),
+  const readings = replies.flatMap((reply) =>
+    reply.kind === 'switch' ? [reply] : reply.kind === 'switches' ? reply.told : [],
   );
+  const told = new Map(readings.map(({ name, triggered }) => [name, triggered] as const));
   return {
     ...signals,
     guard: readGuard(profile, told, readAt),

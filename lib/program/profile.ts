@@ -56,6 +56,8 @@ const serialSchema = z.object({
     z.literal(500000),
   ]),
   resetsOnOpen: z.boolean(),
+  /** Lines go out without number and checksum, for builds that refuse them; absent in profiles of before: numbered. */
+  unnumbered: z.boolean().optional(),
 });
 
 /** A rig's versioned numbers. All lengths mm, speeds mm/s, accelerations mm/s². */

@@ -32,6 +32,7 @@ export function readProfile(form: FormData): unknown {
   put(profile, 'fitted.guardSwitch', readGuardSwitch(form));
   put(profile, 'serial.baudRate', Number(textOf(form, 'profile.serial.baudRate')));
   put(profile, 'serial.resetsOnOpen', isTicked(form, 'profile.serial.resetsOnOpen'));
+  if (isTicked(form, 'profile.serial.unnumbered')) put(profile, 'serial.unnumbered', true);
   return profile;
 }
 

@@ -162,6 +162,12 @@ function Serial({ profile }: { profile: Profile | null }) {
         hint="Small boards do, native-USB boards do not."
         defaultChecked={profile?.serial.resetsOnOpen ?? true}
       />
+      <FormCheck
+        path="profile.serial.unnumbered"
+        label="Send lines without number and checksum"
+        hint="Only for firmware that refuses them. A damaged line is then carried out as it arrives, and a lost answer holds the run."
+        defaultChecked={profile?.serial.unnumbered ?? false}
+      />
     </Section>
   );
 }

@@ -95,8 +95,17 @@ describe('the firmware’s name', () => {
     expect(real.known && real.firmware.virtual).toBe(false);
   });
 
+  it('is taken of Repetier, whatever else its line names, and of a fork by its banner', () => {
+    const line = 'FIRMWARE_NAME:Repetier_1.0.4 FIRMWARE_URL:https://x/marlin-fork PROTOCOL_VERSION:1.0';
+    expect(identify(line, {})).toMatchObject({ known: true, firmware: { dialect: 'Repetier' } });
+    expect(identify('FIRMWARE_NAME:Of my own 2', {}).known).toBe(false);
+    expect(identify('FIRMWARE_NAME:Of my own 2', {}, true)).toMatchObject({
+      known: true,
+      firmware: { dialect: 'main family' },
+    });
+  });
+
   it.each([
-    ['FIRMWARE_NAME:Repetier_1.0.4', 'Repetier'],
     ['FIRMWARE_NAME: RepRapFirmware for Duet 2', 'RepRapFirmware'],
     ['FIRMWARE_NAME:Smoothieware, FIRMWARE_URL:x', 'Smoothieware'],
     ['FIRMWARE_NAME:Klipper', 'binary MCU'],
@@ -110,6 +119,7 @@ describe('the firmware’s name', () => {
   it('is not waited for where something else speaks', () => {
     expect(refusalOfStranger("Grbl 1.1h ['$' for help]")).toContain('grbl');
     expect(refusalOfStranger('error:20')).toContain('grbl');
+    expect(refusalOfStranger('Smoothie')).toContain('Smoothieware');
     expect(refusalOfStranger('\x00\x8f\xf1~\x02')).toContain('Not a G-code port');
     expect(refusalOfStranger('Marlin 2.1.2')).toBeNull();
   });

@@ -213,10 +213,10 @@ describe('a greeting', () => {
   });
 
   it('refuses what speaks another language, with the reason', async () => {
-    const repetier = new TestPort((line) =>
-      line.includes('M115') ? 'FIRMWARE_NAME:Repetier_1.0\nok\n' : 'ok\n',
+    const duet = new TestPort((line) =>
+      line.includes('M115') ? 'FIRMWARE_NAME: RepRapFirmware for Duet 2\nok\n' : 'ok\n',
     );
-    expect(await greeted(repetier, false, (clock) => clock.pass(1_000))).toMatchObject({
+    expect(await greeted(duet, false, (clock) => clock.pass(1_000))).toMatchObject({
       outcome: 'stranger',
     });
     const grbl = new TestPort((line) => (line === '\n' ? null : 'error:20\n'));
