@@ -1,34 +1,10 @@
 import { readFile } from 'node:fs/promises';
 import { dirname, resolve } from 'node:path';
-import { z } from 'zod';
+import type { z } from 'zod';
 import { JsonProblem, parseLocatedJson, type LocatedJson } from './config/located-json';
+import { configSchema, UNKNOWN_NAME } from './config/schema';
 
-const configSchema = z.strictObject({
-  server: z
-    .url({ protocol: /^https?$/, error: 'must be the address of the server, as "https://ellwand.example"' })
-    .transform((address) => address.replace(/\/+$/, '')),
-  dataDir: z.string({ error: 'must name the folder in which the agent keeps its journal' }).min(1),
-  pairingCode: z.string().min(8, 'must be the code from the set-up page, at least 8 characters').optional(),
-  /** How many times as fast the agent waits. Above 1 it serves virtual rigs alone. */
-  clockSpeed: z
-    .number({ error: 'must be a number from 1, and only for virtual rigs' })
-    .min(1, 'must be at least 1')
-    .max(1_000, 'must be at most 1000')
-    .default(1),
-  rigs: z
-    .array(
-      z.strictObject({
-        rig: z.string({ error: 'must be the name or id of a rig as in the set-up' }).min(1),
-        port: z.string({ error: 'must be a serial port, as "/dev/ttyUSB0"' }).min(1),
-      }),
-      { error: 'must be a list of { "rig": …, "port": … }' },
-    )
-    .min(1, 'must name at least one rig and its port')
-    .max(64, 'must not name more than 64 rigs')
-    .superRefine(refuseDoubles),
-});
-
-/** `dataDir` is absolute; `rigs[].rig` is a rig's name or id. */
+/** `dataDir` and `caFile` are absolute; `rigs[].rig` is a rig's name or id. */
 export type AgentConfig = z.infer<typeof configSchema>;
 
 /** One line of the configuration that must be changed. */
@@ -56,7 +32,13 @@ export async function loadConfig(path: string): Promise<AgentConfig> {
   const located = parseText(path, await readText(path));
   const parsed = configSchema.safeParse(located.value);
   if (!parsed.success) throw new ConfigError(path, problemsOf(parsed.error, located));
-  return { ...parsed.data, dataDir: resolve(dirname(path), parsed.data.dataDir) };
+  const { dataDir, caFile } = parsed.data;
+  const besideFile = (name: string) => resolve(dirname(path), name);
+  return {
+    ...parsed.data,
+    dataDir: besideFile(dataDir),
+    ...(caFile === undefined ? {} : { caFile: besideFile(caFile) }),
+  };
 }
 
 async function readText(path: string): Promise<string> {
@@ -84,7 +66,7 @@ function problemsOf(error: z.ZodError, located: LocatedJson): ConfigProblem[] {
     const keys = issue.code === 'unrecognized_keys' ? issue.keys : [null];
     return keys.map((key) => {
       const path = [...issue.path, ...(key === null ? [] : [key])].map(String);
-      const message = key === null ? issue.message : 'is not known here: remove it or correct its name';
+      const message = key === null ? issue.message : UNKNOWN_NAME;
       return { line: lineOf(path, located), path: path.join('.'), message };
     });
   });
@@ -102,15 +84,4 @@ function lineOf(path: readonly string[], located: LocatedJson): number | null {
 function describe(file: string, { line, path, message }: ConfigProblem): string {
   const place = line === null ? file : `${file}, line ${line}`;
   return path === '' ? `${place}: ${message}` : `${place}: "${path}" ${message}`;
-}
-
-function refuseDoubles(rigs: { rig: string; port: string }[], ctx: z.RefinementCtx): void {
-  for (const key of ['rig', 'port'] as const) {
-    const seen = new Set<string>();
-    for (const [index, entry] of rigs.entries()) {
-      const message = `is given twice: each rig has one port, each port one rig`;
-      if (seen.has(entry[key])) ctx.addIssue({ code: 'custom', path: [index, key], message });
-      seen.add(entry[key]);
-    }
-  }
 }

@@ -27,6 +27,10 @@ export const ERRORS = {
     status: 426,
     title: 'This agent speaks another version. Update the older of the two.',
   },
+  'agent-too-old': {
+    status: 426,
+    title: 'This agent is too old for the server. Put a new one in its place.',
+  },
   'journal-gap': { status: 409, title: 'Events are missing before these. Send them from the number given.' },
   'event-conflict': {
     status: 409,

@@ -1,10 +1,14 @@
 import type { AgentConfig } from '@/agent/config';
+import type { Log } from '@/agent/log';
 import { saveCachedRigs } from '@/agent/uplink/rigs-cache';
 import type { Uplink } from '@/agent/uplink/uplink';
 import type { Rig } from '@/agent/rig/rig';
 import { EllwandError } from '@/lib/errors';
 import type { Command } from '@/lib/protocol/commands';
 import type { BoundRigs } from '@/lib/protocol/pairing';
+import type { RigReport } from '@/lib/protocol/report';
+import { watchPort } from './port-log';
+import type { StartRig } from './start-rig';
 
 export type BoundRig = BoundRigs['rigs'][number];
 
@@ -13,25 +17,26 @@ export interface FleetParts {
   uplink: Pick<Uplink, 'answer' | 'fetchRigs' | 'report'>;
   /** The agent's wall time. */
   date: () => Date;
-  /** Makes and starts a rig that is bound to this agent and has a port. */
-  startRig: (bound: BoundRig, port: string) => Promise<Rig>;
-  /** Told what a person at the computer may have to know. */
-  say: (text: string) => void;
+  startRig: StartRig;
+  log: Log;
 }
 
 /** The rigs of this agent: those that the configuration names and the server has bound to it. */
 export class Fleet {
   readonly #rigs = new Map<string, Rig>();
   readonly #names = new Map<string, string>();
+  readonly #watches = new Map<string, (report: RigReport) => void>();
 
   constructor(private readonly parts: FleetParts) {}
 
   /** Starts what is not running yet and hands the others their numbers. */
   async bind({ rigs }: BoundRigs): Promise<void> {
-    for (const { rig: wanted, port } of this.parts.config.rigs) {
+    for (const rigPort of this.parts.config.rigs) {
+      const { rig: wanted } = rigPort;
       const bound = rigs.find(({ rigId, name }) => rigId === wanted || name === wanted);
       if (!bound) {
-        this.parts.say(`The server has no rig "${wanted}" for this agent. Look at its name in the set-up.`);
+        const message = 'The server has no such rig for this agent. Look at its name in the set-up.';
+        this.parts.log({ level: 'error', rig: wanted, code: 'rig-not-bound', message });
         continue;
       }
       this.#names.set(bound.name, bound.rigId);
@@ -39,13 +44,28 @@ export class Fleet {
       this.#names.set(wanted, bound.rigId);
       const running = this.#rigs.get(bound.rigId);
       if (running) running.rebind(bound.profile, bound.fence);
-      else this.#rigs.set(bound.rigId, await this.parts.startRig(bound, port));
+      else {
+        const rig = await this.parts.startRig(bound, rigPort, () => this.report());
+        this.#rigs.set(bound.rigId, rig);
+        this.#watches.set(bound.rigId, watchPort(bound.name, this.parts.log));
+      }
     }
     this.report();
   }
 
   report(): void {
-    this.parts.uplink.report([...this.#rigs.values()].map((rig) => rig.report()));
+    const reports = [...this.#rigs.values()].map((rig) => rig.report());
+    for (const report of reports) this.#watches.get(report.rigId)?.(report);
+    this.parts.uplink.report(reports);
+  }
+
+  /** What each rig would report now, under the name that the configuration gives it. */
+  state(): { rig: string; report: RigReport | null }[] {
+    return this.parts.config.rigs.map(({ rig }) => {
+      const rigId = this.#names.get(rig);
+      const running = rigId === undefined ? undefined : this.#rigs.get(rigId);
+      return { rig, report: running?.report() ?? null };
+    });
   }
 
   command(command: Command): void {

@@ -13,7 +13,7 @@ import { createGeneration, listGenerations, type Numbered } from './segment-file
 /** A segment is closed once it is this long. */
 const SEGMENT_BYTES = 8 * 1024 * 1024;
 /** At this size on disk the journal calls itself full: it still takes records, the core starts no run. */
-const BOUND_BYTES = 256 * 1024 * 1024;
+export const BOUND_BYTES = 256 * 1024 * 1024;
 
 export interface JournalOptions<Note> {
   /** The journal's own folder; made when missing. */

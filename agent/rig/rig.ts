@@ -1,6 +1,7 @@
 import type { Clock } from '@/agent/clock';
 import type { Reply, ReplyKind } from '@/agent/dialect/reply';
 import type { OpenPort } from '@/agent/link/port';
+import type { FindPort } from '@/agent/link/ports';
 import type { ProgramStore } from '@/agent/programs/store';
 import { reduce, type RigEvent } from '@/agent/runner/reduce';
 import { reportOf, runnerState } from '@/agent/runner/report';
@@ -23,7 +24,7 @@ const HEARD: readonly ReplyKind[] = ['refusal', 'action', 'other', 'error', 'hal
 export interface RigParts {
   /** The state to begin with, from the journal. */
   state: RigState;
-  path: string;
+  findPort: FindPort;
   openPort: OpenPort;
   clock: Clock;
   /** Why this agent does not serve a firmware that it could speak to; null: it does. */
@@ -57,7 +58,7 @@ export class Rig {
   constructor(private readonly parts: RigParts) {
     this.#state = parts.state;
     this.#session = createSession({
-      path: parts.path,
+      findPort: parts.findPort,
       serial: () => this.#state.profile.serial,
       openPort: parts.openPort,
       clock: parts.clock,
@@ -65,7 +66,7 @@ export class Rig {
       random: parts.random,
       events: {
         opening: () => this.#dispatch({ type: 'opening' }),
-        met: (firmware, bannerSeen) => this.#dispatch({ type: 'met', firmware, bannerSeen }),
+        met: (firmware, bannerSeen, notice) => this.#dispatch({ type: 'met', firmware, bannerSeen, notice }),
         stranger: (reason) => this.#dispatch({ type: 'stranger', reason }),
         unreachable: (reason) => this.#dispatch({ type: 'unreachable', reason }),
         lost: (failure, reason) => this.#dispatch({ type: 'lost', failure, reason }),

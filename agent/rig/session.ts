@@ -4,6 +4,8 @@ import { createConversation, type Conversation } from '@/agent/link/conversation
 import type { LinkFailure } from '@/agent/link/exchange';
 import { createEar, greet, type Ear, type Greeting } from '@/agent/link/greet';
 import type { OpenPort, Port } from '@/agent/link/port';
+import type { FindPort } from '@/agent/link/ports';
+import { resetNotice } from './reset-notice';
 import type { Firmware } from '@/lib/protocol/report';
 
 const RETRY_FIRST_MS = 250;
@@ -13,7 +15,8 @@ const STRANGER_MS = 15_000;
 
 export interface SessionEvents {
   opening(): void;
-  met(firmware: Firmware, bannerSeen: boolean): void;
+  /** `notice`: the opening went otherwise than the profile says. */
+  met(firmware: Firmware, bannerSeen: boolean, notice: string | null): void;
   stranger(reason: string): void;
   /** The port does not open, or nobody answers. */
   unreachable(reason: string): void;
@@ -22,7 +25,8 @@ export interface SessionEvents {
 }
 
 export interface SessionParts {
-  path: string;
+  /** Asked at each opening: the rig may have come back under another name. */
+  findPort: FindPort;
   /** Asked at each opening: a new profile may have come. */
   serial: () => { baudRate: number; resetsOnOpen: boolean; unnumbered?: boolean };
   openPort: OpenPort;
@@ -119,12 +123,16 @@ class PortSession implements Session {
   }
 
   async #open(): Promise<Port | null> {
+    const { findPort, openPort, serial, events } = this.parts;
     try {
-      return await this.parts.openPort({ path: this.parts.path, baudRate: this.parts.serial().baudRate });
+      const port = await findPort();
+      if (port.found) return await openPort({ path: port.path, baudRate: serial().baudRate });
+      if (port.refused) events.stranger(port.reason);
+      else events.unreachable(port.reason);
     } catch (error) {
-      this.parts.events.unreachable(error instanceof Error ? error.message : 'The port does not open.');
-      return null;
+      events.unreachable(error instanceof Error ? error.message : 'The port does not open.');
     }
+    return null;
   }
 
   /** From the opened port to its loss. */
@@ -143,6 +151,7 @@ class PortSession implements Session {
     port.onClose(() => this.#ending.end('closed'));
     let outcome: 'met' | 'stranger' | 'unreachable' = 'unreachable';
     let resets = this.parts.serial().resetsOnOpen;
+    let opened = true;
     while (!this.#closed) {
       const greeting = this.#admit(await greet(conversation, this.#ear, clock, resets));
       if (greeting.outcome === 'failed' && greeting.failure === 'reset') continue;
@@ -158,11 +167,12 @@ class PortSession implements Session {
       this.#ending = createEnding();
       if (!port.isOpen) this.#ending.end('closed');
       this.conversation = conversation;
-      events.met(greeting.firmware, greeting.bannerSeen);
+      const { firmware, bannerSeen } = greeting;
+      events.met(firmware, bannerSeen, opened ? resetNotice(resets, bannerSeen) : null);
       const failure = await this.#untilLost(conversation);
       talking = false;
       if (failure !== 'reset') break;
-      resets = false;
+      resets = opened = false;
     }
     this.conversation = null;
     await port.close();

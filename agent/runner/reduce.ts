@@ -24,7 +24,7 @@ export type RigEvent = { nowMs: number } & (
   | { type: 'local-stop' }
   | { type: 'fetched'; commandId: string; runId: string; fetched: FetchedProgram }
   | { type: 'opening' }
-  | { type: 'met'; firmware: Firmware; bannerSeen: boolean }
+  | { type: 'met'; firmware: Firmware; bannerSeen: boolean; notice?: string | null }
   | { type: 'stranger'; reason: string }
   | { type: 'unreachable'; reason: string }
   | { type: 'lost'; failure: LinkFailure; reason: string }
@@ -63,7 +63,7 @@ function apply(turn: Turn, event: RigEvent): void {
     case 'opening':
       return turn.set({ port: 'opening' });
     case 'met':
-      return onMet(turn, event.firmware, event.bannerSeen);
+      return onMet(turn, event.firmware, event.bannerSeen, event.notice ?? null);
     case 'stranger':
       return turn.set({ port: 'refused', portProblem: event.reason.slice(0, 200) });
     case 'unreachable':
@@ -146,11 +146,12 @@ export function heldRun(given: RunProgram, program: ReadProgram): Run {
   };
 }
 
-function onMet(turn: Turn, firmware: Firmware, bannerSeen: boolean): void {
+/** `notice`: what is odd about the opening, though the rig is met. */
+function onMet(turn: Turn, firmware: Firmware, bannerSeen: boolean, notice: string | null): void {
   const { rigId, profile, displayShown, workHold } = turn.state;
   turn.set({
     port: 'open',
-    portProblem: null,
+    portProblem: notice?.slice(0, 200) ?? null,
     halted: false,
     firmware,
     signals: unreadSignals(profile),

@@ -2,12 +2,26 @@ import { rmSync } from 'node:fs';
 import { createConnection, createServer, type Server, type Socket } from 'node:net';
 import { join, relative } from 'node:path';
 import { z } from 'zod';
+import { agentStateSchema, type AgentState } from './state';
 
-const requestSchema = z.object({ stop: z.string().min(1).nullable() });
+const requestSchema = z.union([
+  z.object({ stop: z.string().min(1).nullable() }),
+  z.object({ ask: z.literal('state') }),
+]);
 const answerSchema = z.object({ stopped: z.number().int().min(0) });
 
 const LONGEST_REQUEST_CHARACTERS = 1_000;
+/** More than the state of 64 rigs. */
+const LONGEST_ANSWER_CHARACTERS = 1_000_000;
 const ANSWER_MS = 5_000;
+
+/** What may be asked of a running agent from its own computer. */
+export interface StopAnswers {
+  /** Given a rig's name or id, or null for all, stops them and tells how many that were. */
+  stop: (rig: string | null) => number;
+  /** Changes nothing. */
+  state: () => AgentState;
+}
 
 /** Where the agent of this data folder listens for a stop; named from here when that is shorter: 107 bytes are the most. */
 export function stopSocketPath(dataDir: string): string {
@@ -21,13 +35,10 @@ export interface StopSocket {
 }
 
 /**
- * Listens for a stop from the rig's own computer; needs neither server nor network. `stop` gets a rig's name or id,
- * or null for all, and gives how many rigs that were. A socket left by a killed agent is replaced.
+ * Listens for a stop, or a question, from the rig's own computer; needs neither server nor network. A socket left by
+ * a killed agent is replaced.
  */
-export async function openStopSocket(
-  dataDir: string,
-  stop: (rig: string | null) => number,
-): Promise<StopSocket> {
+export async function openStopSocket(dataDir: string, answers: StopAnswers): Promise<StopSocket> {
   const path = stopSocketPath(dataDir);
   rmSync(path, { force: true });
   const sockets = new Set<Socket>();
@@ -35,7 +46,7 @@ export async function openStopSocket(
     sockets.add(socket);
     socket.on('close', () => sockets.delete(socket));
     socket.on('error', () => socket.destroy());
-    serve(socket, stop);
+    serve(socket, answers);
   });
   await listen(server, path);
   return {
@@ -54,7 +65,7 @@ function listen(server: Server, path: string): Promise<void> {
   });
 }
 
-function serve(socket: Socket, stop: (rig: string | null) => number): void {
+function serve(socket: Socket, answers: StopAnswers): void {
   let text = '';
   socket.setEncoding('utf8').on('data', (chunk: string) => {
     text += chunk;
@@ -65,7 +76,8 @@ function serve(socket: Socket, stop: (rig: string | null) => number): void {
       socket.destroy();
       return;
     }
-    socket.end(`${JSON.stringify({ stopped: stop(request.stop) })}\n`);
+    const answer = 'ask' in request ? answers.state() : { stopped: answers.stop(request.stop) };
+    socket.end(`${JSON.stringify(answer)}\n`);
   });
 }
 
@@ -81,16 +93,30 @@ function readLine<Shape>(text: string, schema: z.ZodType<Shape>): Shape | null {
  * Asks the running agent of this data folder to stop a rig (null: all). @returns how many rigs were told; null when no
  * agent runs there
  */
-export function askToStop(dataDir: string, rig: string | null): Promise<number | null> {
+export async function askToStop(dataDir: string, rig: string | null): Promise<number | null> {
+  return (await ask(dataDir, { stop: rig }, answerSchema))?.stopped ?? null;
+}
+
+/** What the running agent of this data folder tells of itself; null when none runs there. */
+export function askForState(dataDir: string): Promise<AgentState | null> {
+  return ask(dataDir, { ask: 'state' }, agentStateSchema);
+}
+
+function ask<Answer>(
+  dataDir: string,
+  question: z.infer<typeof requestSchema>,
+  schema: z.ZodType<Answer>,
+): Promise<Answer | null> {
   return new Promise((resolve) => {
     const socket = createConnection(stopSocketPath(dataDir));
     let text = '';
     socket.setTimeout(ANSWER_MS, () => socket.destroy());
-    socket.setEncoding('utf8').on('data', (chunk: string) => (text += chunk));
-    socket.on('connect', () => socket.write(`${JSON.stringify({ stop: rig })}\n`));
+    socket.setEncoding('utf8').on('data', (chunk: string) => {
+      text += chunk;
+      if (text.length > LONGEST_ANSWER_CHARACTERS) socket.destroy();
+    });
+    socket.on('connect', () => socket.write(`${JSON.stringify(question)}\n`));
     socket.on('error', () => resolve(null));
-    socket.on('close', () =>
-      resolve(text.includes('\n') ? (readLine(text, answerSchema)?.stopped ?? null) : null),
-    );
+    socket.on('close', () => resolve(text.includes('\n') ? readLine(text, schema) : null));
   });
 }

@@ -1,7 +1,8 @@
 import { z } from 'zod';
 import type { Clock } from '@/agent/clock';
+import { SOFTWARE } from '@/agent/software';
 import { ERRORS, type ErrorCode } from '@/lib/errors';
-import { PROTOCOL_HEADER, PROTOCOL_VERSION } from '@/lib/protocol/version';
+import { PROTOCOL_HEADER, PROTOCOL_VERSION, SOFTWARE_HEADER } from '@/lib/protocol/version';
 import { Deadline } from './waiting';
 
 export interface Server {
@@ -39,6 +40,7 @@ export function headersFor(token: string | null): Record<string, string> {
   return {
     ...(token === null ? {} : { authorization: `Bearer ${token}` }),
     [PROTOCOL_HEADER]: String(PROTOCOL_VERSION),
+    [SOFTWARE_HEADER]: SOFTWARE,
     'content-type': 'application/json',
   };
 }

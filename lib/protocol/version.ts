@@ -4,6 +4,31 @@ export const PROTOCOL_VERSION = 1;
 /** Header that names the protocol version on every request of an agent. */
 export const PROTOCOL_HEADER = 'ellwand-protocol';
 
+/** Header in which an agent names its software on every request, as `ellwand-agent 0.2.0`. */
+export const SOFTWARE_HEADER = 'ellwand-agent';
+
+/** An older agent is given no rigs, no program and no start: what it does wrong is known and mended. */
+export const LEAST_AGENT_VERSION = '0.2.0';
+
+const SOFTWARE = /^ellwand-agent (\d{1,6})\.(\d{1,6})\.(\d{1,6})$/;
+
+/**
+ * Whether an agent of this software may start runs. @param software as the agent names itself; what is no version is
+ * too old, and so is an agent that does not tell @param least the version that is just not too old
+ */
+export function isRecentAgent(software: string | null, least = LEAST_AGENT_VERSION): boolean {
+  const version = SOFTWARE.exec(software ?? '')
+    ?.slice(1)
+    .map(Number);
+  if (!version) return false;
+  const wanted = least.split('.').map(Number);
+  for (const [index, part] of version.entries()) {
+    const difference = part - (wanted[index] ?? 0);
+    if (difference !== 0) return difference > 0;
+  }
+  return true;
+}
+
 /** A command that moves something is refused by the agent when it is older than this. */
 export const COMMAND_MAX_AGE_MS = 5_000;
 

@@ -37,6 +37,8 @@ describe('the configuration of an agent', () => {
       dataDir: join(path, '..', 'state'),
       pairingCode: 'ABCD-1234',
       clockSpeed: 1,
+      allowUnencrypted: false,
+      log: { format: 'auto', level: 'info' },
       rigs: [
         { rig: 'Rig 1', port: '/dev/ttyUSB0' },
         { rig: 'Rig 2', port: '/dev/ttyUSB1' },
@@ -54,6 +56,61 @@ describe('the configuration of an agent', () => {
     ['a missing port', GOOD.replace(', "port": "/dev/ttyUSB1"', ''), 7, 'rigs.1.port'],
   ])('names the line and the place of %s', async (_what, text, line, path) => {
     expect(await problemsIn(text)).toEqual([expect.objectContaining({ line, path })]);
+  });
+
+  it('takes a port by what the board is, in any way of writing its numbers', async () => {
+    const identity = '{ "vendorId": "0x1A86", "productId": "7523", "usbPath": "1-1.4" }';
+    const { rigs } = await loadConfig(await fileWith(GOOD.replace('"/dev/ttyUSB1"', identity)));
+    expect(rigs[1]?.port).toEqual({ vendorId: '1a86', productId: '7523', usbPath: '1-1.4' });
+  });
+
+  const identityPort = (fields: string) =>
+    GOOD.replace('"/dev/ttyUSB1"', `{\n"vendorId": "1a86",\n${fields}\n}`);
+
+  it.each([
+    ['a product that is no number', identityPort('"productId": "CH340"'), 9, 'rigs.1.port.productId'],
+    ['a missing product', identityPort('"serialNumber": "A5"'), 7, 'rigs.1.port.productId'],
+    [
+      'a socket that is none',
+      identityPort('"productId": "7523",\n"usbPath": "left"'),
+      10,
+      'rigs.1.port.usbPath',
+    ],
+    [
+      'a misspelt name in a port',
+      identityPort('"productId": "7523",\n"serial": "A5"'),
+      10,
+      'rigs.1.port.serial',
+    ],
+    ['a log of another kind', GOOD.replace('"rigs"', '"log": { "level": "loud" },\n"rigs"'), 5, 'log.level'],
+  ])('names the line and the place of %s', async (_what, text, line, path) => {
+    expect(await problemsIn(text)).toEqual([expect.objectContaining({ line, path })]);
+  });
+
+  it('refuses two rigs that are the same board', async () => {
+    const port = '{ "productId": "7523", "vendorId": "1a86" }';
+    const twice = GOOD.replace('"/dev/ttyUSB0"', port).replace(
+      '"/dev/ttyUSB1"',
+      port.replace('1a86', '1A86'),
+    );
+    expect(await problemsIn(twice)).toEqual([expect.objectContaining({ line: 7, path: 'rigs.1.port' })]);
+  });
+
+  it.each([
+    ['http://127.0.0.1:3000', true],
+    ['http://localhost:3000', true],
+    ['http://[::1]:3000', true],
+    ['https://workshop.example', true],
+    ['http://workshop.example', false],
+    ['http://192.168.1.10:3000', false],
+    ['http://127.0.0.1.example', false],
+    ['http://localhost.example', false],
+  ])('lets a token travel to %s: %s', async (server, taken) => {
+    const text = GOOD.replace('http://127.0.0.1:3000/', server);
+    if (taken) expect((await loadConfig(await fileWith(text))).server).toBe(server);
+    else expect(await problemsIn(text)).toEqual([expect.objectContaining({ line: 2, path: 'server' })]);
+    const told = text.replace('"rigs"', '"allowUnencrypted": true,\n"rigs"');
+    expect((await loadConfig(await fileWith(told))).server).toBe(server);
   });
 
   it.each([
