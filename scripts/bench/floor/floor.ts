@@ -4,7 +4,7 @@ import { seedEnv } from '@/lib/env/seed';
 import type { LiveMessage, RigDto } from '@/lib/schemas/floor';
 import { readFloor } from '@/lib/services/floor/read-floor';
 import { readDemoAccounts } from '@/scripts/house/demo.mjs';
-import { actAs } from './actors';
+import { actAs } from '@/scripts/hands/actors';
 import { followLive } from './live-client';
 import { Operator } from './operator';
 import { queueWork } from './queue-work';

@@ -3,19 +3,18 @@ import { EllwandError } from '@/lib/errors';
 import type { RigDto, RigPageDto } from '@/lib/schemas/floor';
 import type { CommandOutcome } from '@/lib/schemas/run';
 import { readRigPage } from '@/lib/services/floor/read-rig-page';
-import { acknowledgeNotes } from '@/lib/services/runs/acknowledge-notes';
 import { clearTray } from '@/lib/services/runs/clear-tray';
 import { goOn } from '@/lib/services/runs/go-on';
 import { measurePieces } from '@/lib/services/runs/measure-pieces';
-import { showCode } from '@/lib/services/runs/show-code';
 import { startRun } from '@/lib/services/runs/start-run';
-import type { ContextNow } from './actors';
+import { acknowledge } from '@/scripts/hands/acknowledge';
+import type { ContextNow } from '@/scripts/hands/actors';
+import { readPresenceCode } from '@/scripts/hands/presence-code';
 import { operatorStep, type OperatorStep } from './operator-step';
 
 const BETWEEN_LOOKS_MS = 300;
 /** A report may be a moment behind a command, a reading too old: it is tried again, but not for ever. */
 const REFUSALS_MOST = 30;
-const CODE_LOOKS_MOST = 20;
 /** What the virtual rigs feed too much is within the lines' tolerance. */
 const MEASURED_EXCESS_MM = 0.5;
 
@@ -82,32 +81,11 @@ export class Operator {
         return null;
       case 'start':
       case 'go-on': {
-        await this.#acknowledge(page, runId);
-        const presenceCode = await this.#codeOf(page);
+        await acknowledge(now, page, runId);
+        const presenceCode = await readPresenceCode(now, page.rig);
         const move = step === 'start' ? startRun : goOn;
         return move({ ctx: now(), input: { runId, presenceCode } });
       }
     }
-  }
-
-  async #acknowledge({ notes, acknowledged }: RigPageDto, runId: string): Promise<void> {
-    if (acknowledged || !notes) return;
-    const input = { runId, notesVersion: notes.version, full: true };
-    await acknowledgeNotes({ ctx: this.contextNow(), input });
-  }
-
-  /** Has the code shown and reads it off the display; null where none is fitted. */
-  async #codeOf({ rig }: RigPageDto): Promise<string | null> {
-    if (!rig.fitted?.display) return null;
-    const before = rig.virtualDisplay;
-    const shown = await showCode({ ctx: this.contextNow(), input: { rigId: rig.id } });
-    if (shown.outcome !== 'done') throw new EllwandError('presence-missing');
-    for (let look = 0; look < CODE_LOOKS_MOST; look += 1) {
-      const { virtualDisplay } = (await this.#read(rig.id)).rig;
-      const code = /^CODE (\d+)$/.exec(virtualDisplay ?? '')?.[1];
-      if (code !== undefined && virtualDisplay !== before) return code;
-      await pause(BETWEEN_LOOKS_MS / 3);
-    }
-    throw new EllwandError('presence-missing');
   }
 }

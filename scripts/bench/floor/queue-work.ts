@@ -1,6 +1,6 @@
 import { createBatch } from '@/lib/services/batches/create-batch';
 import type { RigDto } from '@/lib/schemas/floor';
-import type { ContextNow } from './actors';
+import type { ContextNow } from '@/scripts/hands/actors';
 
 /** Short pieces cut fastest: some 17 a second on the demo's eight rigs. */
 export const LENGTH_MM = 25;
