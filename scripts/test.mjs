@@ -11,8 +11,7 @@ import { printTrouble } from './house/trouble.mjs';
 import { endLeftRunning } from './test/left-running.mjs';
 import { addTally, countReport, emptyTally, isGood, tallyLine } from './test/tally.mjs';
 
-const WITH_SERVICES = ['integration', 'browser'];
-/** Unit tests have the other lane beside them; integration tests mostly wait, so more of them than cores share the time. */
+/** Integration tests mostly wait, so more of them than cores share the time. */
 const WORKERS = /** @type {Record<string, number>} */ ({ unit: 1, integration: 4, browser: 1 });
 const bin = join(repo, 'node_modules', '.bin');
 const stopping = new AbortController();
@@ -65,20 +64,29 @@ function readLog(name, error) {
 }
 
 /**
- * Two lanes, for two cores.
+ * Two lanes, for two cores: what needs no service, one after the other, beside tests that mostly wait for theirs.
  * @returns {Promise<Tally>}
  */
-async function withoutServices() {
-  const lint = async () =>
-    addTally(await check('lint', join(bin, 'eslint'), ['.']), await test('unit', { show: false }));
-  const rest = async () => {
+async function beforeTheBrowser() {
+  const withoutServices = async () => {
+    const lint = await check('lint', join(bin, 'eslint'), ['.']);
     const format = await check('format', join(bin, 'prettier'), ['--check', '.']);
     const types = await check('types', join(bin, 'tsc'), ['--noEmit']);
-    const build = await check('build', process.execPath, [join(repo, 'scripts/build.mjs'), '--for-tests']);
-    return [format, types, build].reduce(addTally);
+    return [lint, format, types, await test('unit', { show: false })].reduce(addTally);
   };
-  const lanes = await Promise.all([lint(), rest()]);
-  return [...lanes, await nothingLeft('unit')].reduce(addTally);
+  const withServices = async () => {
+    const build = await check('build', process.execPath, [join(repo, 'scripts/build.mjs'), '--for-tests']);
+    return addTally(build, await test('integration', { show: true }));
+  };
+  const lanes = await Promise.all([withoutServices(), withServices()]);
+  return [...lanes, await nothingLeft('unit and integration')].reduce(addTally);
+}
+
+/** @returns {Promise<Tally>} the fixed seeds of the fault harness */
+async function underFaults() {
+  const program = join(repo, 'scripts/faults.mjs');
+  const held = await check('faults', process.execPath, [program, '--schedules', '25', '--seed', '1']);
+  return addTally(held, await nothingLeft('faults'));
 }
 
 /**
@@ -129,11 +137,10 @@ let total = emptyTally();
 try {
   await ensureNpmPackages({ say, signal });
   await ensureDebianPackages([...servicePackages, chromiumPackage], { say, signal });
-  total = await withoutServices();
-  for (const project of WITH_SERVICES) {
-    total = addTally(total, await test(project, { show: true }));
-    total = addTally(total, await nothingLeft(project));
-  }
+  total = await beforeTheBrowser();
+  total = addTally(total, await test('browser', { show: true }));
+  total = addTally(total, await nothingLeft('browser'));
+  total = addTally(total, await underFaults());
 } catch (error) {
   printTrouble(error);
   total = addTally(total, { ...emptyTally(), failed: 1 });

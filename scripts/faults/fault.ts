@@ -7,7 +7,12 @@ export type RigFault =
   | { kind: 'rig-power'; offMs: number }
   | { kind: 'board-reset' }
   | { kind: 'unplugged'; forMs: number }
-  | { kind: 'noise'; noise: Extract<ControlInput, { do: 'noise' }>['kind']; direction: 'in' | 'out'; bytes: number }
+  | {
+      kind: 'noise';
+      noise: Extract<ControlInput, { do: 'noise' }>['kind'];
+      direction: 'in' | 'out';
+      bytes: number;
+    }
   | { kind: 'ok-spoilt'; fault: Extract<ControlInput, { do: 'ok' }>['fault'] }
   | { kind: 'mute'; forMs: number }
   | { kind: 'network-cut'; forMs: number }

@@ -132,9 +132,12 @@ function judgeMoves(evidence: Evidence, verdict: Verdict): void {
   let openedAtMs: number | null = null;
   for (const line of tally) {
     if (line.kind === 'guard') openedAtMs = line.open ? line.atMs : null;
-    if (line.kind === 'limit-exceeded') complain(`${line.axis} was sent to ${line.wantedMm} mm, beyond its limits`);
+    if (line.kind === 'limit-exceeded')
+      complain(`${line.axis} was sent to ${line.wantedMm} mm, beyond its limits`);
     if (line.kind === 'motion-guard-open' && openedAtMs !== null && line.atMs > openedAtMs + guardDelayMs) {
-      complain(`${line.axes.join('')} began to move ${Math.round(line.atMs - openedAtMs)} ms after the guard opened`);
+      complain(
+        `${line.axes.join('')} began to move ${Math.round(line.atMs - openedAtMs)} ms after the guard opened`,
+      );
     }
   }
 }

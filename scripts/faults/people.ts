@@ -167,7 +167,7 @@ export class Person {
     let standsStill = false;
     while (!standsStill && Date.now() < giveUpMs && !this.#closed) {
       await pause(BETWEEN_LOOKS_MS);
-      standsStill = (await this.#look().catch(() => null))?.rig.workHold?.standstillAt != null;
+      standsStill = Boolean((await this.#look().catch(() => null))?.rig.workHold?.standstillAt);
     }
     if (!standsStill) return;
     const hold: Span = { fromMs: Date.now(), untilMs: Infinity };

@@ -136,7 +136,8 @@ export class Relay {
     return new Promise((resolve, reject) => {
       const upward = this.#ask(incoming, (response) => {
         bodyOf(response).then(
-          (told) => resolve({ status: response.statusCode ?? 502, headers: withoutLength(response), body: told }),
+          (told) =>
+            resolve({ status: response.statusCode ?? 502, headers: withoutLength(response), body: told }),
           reject,
         );
       });
@@ -153,7 +154,12 @@ export class Relay {
 }
 
 function withoutLength({ headers }: IncomingMessage): IncomingMessage['headers'] {
-  const { 'content-length': _length, 'transfer-encoding': _encoding, connection: _connection, ...rest } = headers;
+  const {
+    'content-length': _length,
+    'transfer-encoding': _encoding,
+    connection: _connection,
+    ...rest
+  } = headers;
   return rest;
 }
 

@@ -102,7 +102,11 @@ async function untilBagged(
   return false;
 }
 
-async function forAWhile(ms: number, begin: () => Promise<unknown>, end: () => Promise<unknown>): Promise<void> {
+async function forAWhile(
+  ms: number,
+  begin: () => Promise<unknown>,
+  end: () => Promise<unknown>,
+): Promise<void> {
   await begin();
   await pause(ms);
   await end();

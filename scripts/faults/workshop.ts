@@ -56,7 +56,10 @@ export class Workshop {
     this.ownDisks = canMount(join(folder, 'disk'));
   }
 
-  static async open(house: { url: string; databaseUrl: string; folder: string; repo: string }, benches: number) {
+  static async open(
+    house: { url: string; databaseUrl: string; folder: string; repo: string },
+    benches: number,
+  ) {
     const { db, pool } = openDatabase(house.databaseUrl, { connectTimeoutMs: 1_500 });
     // A server that is restarted cuts them all; each call tells it again.
     pool.on('error', () => undefined);
@@ -78,7 +81,14 @@ export class Workshop {
   };
 
   async order(bench: Bench, pieces: number, lengthMm: number, name: string): Promise<string> {
-    const line = { label: 'a-b', wireId: bench.wireId, lengthMm, toleranceMinusMm: 1, tolerancePlusMm: 2, pieces };
+    const line = {
+      label: 'a-b',
+      wireId: bench.wireId,
+      lengthMm,
+      toleranceMinusMm: 1,
+      tolerancePlusMm: 2,
+      pieces,
+    };
     const input = { name, dueAt: null, priority: 1, lines: [line], queue: true };
     return (await createBatch({ ctx: this.now(), input })).batchId;
   }
@@ -157,7 +167,12 @@ export class Workshop {
     const ctx = { ...this.#system(), actor: { kind: 'system' as const } };
     const person = { name: 'Owner', email: 'owner@faults.example', password: randomUUID() };
     const { id } = await createFirstOwner({ ctx, input: { workshopName: 'Faults', ...person } });
-    this.#owner = { kind: 'person', personId: id, name: 'Owner', roles: ['owner', 'operator', 'scheduler', 'maintainer'] };
+    this.#owner = {
+      kind: 'person',
+      personId: id,
+      name: 'Owner',
+      roles: ['owner', 'operator', 'scheduler', 'maintainer'],
+    };
   }
 
   #system() {
