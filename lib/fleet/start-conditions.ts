@@ -18,6 +18,8 @@ export interface StartFacts {
   outOfService: boolean;
   heardAgoMs: number | null;
   connected: boolean;
+  /** The agent's software is not known to be older than the server bears. */
+  agentRecent: boolean;
   workHold: boolean;
   trayCleared: boolean;
   programHeld: boolean;
@@ -55,6 +57,8 @@ const CONDITIONS: readonly Condition[] = [
   ['out-of-service', (f) => !f.outOfService],
   ['rig-silent', (f) => f.heardAgoMs !== null && f.heardAgoMs <= SILENT_AFTER_MS],
   ['rig-not-connected', (f) => f.connected],
+  // What has begun may be finished: going on is not starting.
+  ['agent-too-old', (f) => f.agentRecent || f.action === 'go-on'],
   ['work-hold', (f) => !f.workHold],
   ['tray-not-cleared', (f) => f.trayCleared],
   ['program-not-held', (f) => f.programHeld],

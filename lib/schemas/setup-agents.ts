@@ -19,7 +19,10 @@ export const agentDtoSchema = z.object({
   pairing: z.enum(['paired', 'waiting', 'no code', 'revoked']),
   pairingExpiresAt: moment.nullable(),
   pairedAt: moment.nullable(),
+  /** As the agent last told it; null: never heard. */
   software: z.string().nullable(),
+  /** It is given nothing to start until a newer one takes its place. */
+  tooOld: z.boolean(),
   lastReportAt: moment.nullable(),
 });
 

@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { RigReport } from '@/lib/protocol/report';
+import { LEAST_AGENT_VERSION } from '@/lib/protocol/version';
 import { acknowledgeNotes } from '@/lib/services/runs/acknowledge-notes';
 import { beginWorkHold } from '@/lib/services/runs/begin-work-hold';
 import { endWorkHold } from '@/lib/services/runs/end-work-hold';
@@ -146,6 +147,16 @@ describe('law 5: a start is refused', () => {
     await say();
     floor.clock.pass(8_001);
     await expect(start()).rejects.toEqual(errorCode('rig-silent'));
+  });
+
+  it('by an agent that is too old, or whose age nobody knows', async () => {
+    await say();
+    const software = (told: string | null) => floor.world.query('update agents set software = $1', [told]);
+    for (const old of ['ellwand-agent 0.1.9', null]) {
+      await software(old);
+      await expect(start()).rejects.toEqual(errorCode('agent-too-old'));
+    }
+    await software(`ellwand-agent ${LEAST_AGENT_VERSION}`);
   });
 
   it('once the rig was given to somebody else meanwhile', async () => {

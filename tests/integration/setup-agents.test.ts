@@ -1,4 +1,5 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { LEAST_AGENT_VERSION } from '@/lib/protocol/version';
 import { addAgent } from '@/lib/services/agents/add-agent';
 import { bindRigs } from '@/lib/services/agents/bind-rigs';
 import { listAgents } from '@/lib/services/agents/list-agents';
@@ -59,6 +60,21 @@ describe('a pairing code', () => {
     const second = await renewPairingCode({ ctx, input: { agentId: first.agentId } });
     await expect(pair(first.code)).rejects.toEqual(code('pairing-refused'));
     expect(await pair(second.code)).toMatchObject({ name: 'Renewed' });
+  });
+});
+
+describe('the software of an agent', () => {
+  it('is shown as it was told, with whether it is too old to start anything', async () => {
+    const ctx = await world.as('owner');
+    const { code: offered, agentId } = await addAgent({ ctx, input: { name: 'Aged', rigIds: [] } });
+    const shown = async () => (await listAgents({ ctx })).find(({ id }) => id === agentId);
+    expect(await shown()).toMatchObject({ software: null, tooOld: false });
+    const input = { protocol: 1, code: offered, software: 'ellwand-agent 0.1.9' };
+    await pairAgent({ ctx: world.system(), input });
+    expect(await shown()).toMatchObject({ software: 'ellwand-agent 0.1.9', tooOld: true });
+    const software = `ellwand-agent ${LEAST_AGENT_VERSION}`;
+    await world.query('update agents set software = $1 where id = $2', [software, agentId]);
+    expect(await shown()).toMatchObject({ software, tooOld: false });
   });
 });
 

@@ -4,7 +4,8 @@ import { isNews } from '@/lib/fleet/report-change';
 import { revokeAgent } from '@/lib/services/agents/revoke-agent';
 import { showCode } from '@/lib/services/runs/show-code';
 import { answerCommand } from '@/lib/services/traffic/answer-command';
-import { authenticateAgent } from '@/lib/services/traffic/authenticate-agent';
+import { LEAST_AGENT_VERSION } from '@/lib/protocol/version';
+import { authenticateAgent, authenticateRecentAgent } from '@/lib/services/traffic/authenticate-agent';
 import { awaitOutcome } from '@/lib/services/traffic/await-outcome';
 import { expireCommands } from '@/lib/services/traffic/expire-commands';
 import { ingestEvents } from '@/lib/services/traffic/ingest-events';
@@ -186,6 +187,17 @@ describe('an agent', () => {
     const wrong = `Bearer ${floor.token.replace(/.$/, (last) => (last === 'A' ? 'B' : 'A'))}`;
     await expect(enter(headers({ authorization: wrong }))).rejects.toEqual(errorCode('token-refused'));
     await expect(enter(headers({ 'ellwand-protocol': '2' }))).rejects.toEqual(errorCode('protocol-unknown'));
+  });
+
+  it('that is too old, or says nothing of itself, is known and given neither rigs nor program', async () => {
+    const enterFor = (software: Record<string, string>) =>
+      authenticateRecentAgent({ ctx: floor.system(), request: { headers: headers(software) } });
+    const newest = { 'ellwand-agent': `ellwand-agent ${LEAST_AGENT_VERSION}` };
+    expect(await enterFor(newest)).toMatchObject({ name: 'Bench' });
+    for (const old of [{}, { 'ellwand-agent': 'ellwand-agent 0.1.9' }]) {
+      expect(await enter(headers(old))).toMatchObject({ name: 'Bench' });
+      await expect(enterFor(old)).rejects.toEqual(errorCode('agent-too-old'));
+    }
   });
 
   it('that speaks another version in what it sends is told so', async () => {

@@ -2,6 +2,7 @@ import { expect } from 'vitest';
 import { randomUUID } from 'node:crypto';
 import { batches, batchLines, lots } from '@/db/schema/batches';
 import type { Profile } from '@/lib/program/profile';
+import { SOFTWARE } from '@/agent/software';
 import type { AgentEvent, EventBody } from '@/lib/protocol/events';
 import type { Report, RigReport } from '@/lib/protocol/report';
 import { addAgent } from '@/lib/services/agents/add-agent';
@@ -73,7 +74,7 @@ export async function openFloorWorld(
   const offer = await addAgent({ ctx: owner, input: { name: 'Bench', rigIds } });
   const paired = await pairAgent({
     ctx: world.system(),
-    input: { protocol: 1, code: offer.code, software: 'test' },
+    input: { protocol: 1, code: offer.code, software: SOFTWARE },
   });
   const actor: AgentActor = { kind: 'agent', agentId: paired.agentId, name: paired.name };
   const system = () => world.system(clock.now());
@@ -185,7 +186,7 @@ export function report(floor: FloorWorld, ...rigs: RigReport[]) {
   const input: Report = {
     protocol: 1,
     sentAt: floor.clock.iso(),
-    software: 'test',
+    software: SOFTWARE,
     journalId: randomUUID(),
     backlog: 0,
     rigs,

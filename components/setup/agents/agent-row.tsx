@@ -1,5 +1,6 @@
 'use client';
 
+import { LEAST_AGENT_VERSION } from '@/lib/protocol/version';
 import type { AgentDto, PairingOfferDto } from '@/lib/schemas/setup-agents';
 import { FormChoices } from '../form/fields';
 import { tickedOf } from '../form/read';
@@ -31,6 +32,7 @@ export function AgentRow({ agent, heard, rigs, mayChange, actions, onOffer }: Ag
         {PAIRING_WORDS[agent.pairing]}
         {heard ? `, ${heard}` : ''}
       </p>
+      <SoftwareLine agent={agent} />
       <p className="text-soft">{agent.rigs.map(({ name }) => name).join(', ') || 'serves no rig'}</p>
       {mayChange ? (
         <Opened title={`Change ${agent.name}`}>
@@ -57,6 +59,17 @@ export function AgentRow({ agent, heard, rigs, mayChange, actions, onOffer }: Ag
         </Opened>
       ) : null}
     </Row>
+  );
+}
+
+function SoftwareLine({ agent: { software, tooOld } }: Pick<AgentRowProps, 'agent'>) {
+  if (software === null) return null;
+  if (!tooOld) return <p className="text-soft">{software}</p>;
+  return (
+    <p className="flex items-center gap-2">
+      <span aria-hidden className="hatch h-4 w-6 shrink-0" />
+      {software} is too old: it starts no run. Put version {LEAST_AGENT_VERSION} or newer in its place.
+    </p>
   );
 }
 

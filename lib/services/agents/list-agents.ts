@@ -1,5 +1,6 @@
 import { asc, isNotNull } from 'drizzle-orm';
 import { agents, rigs } from '@/db/schema/rigs';
+import { isRecentAgent } from '@/lib/protocol/version';
 import type { AgentDto } from '@/lib/schemas/setup-agents';
 import { authorise } from '../authorise';
 import type { ServiceContext } from '../context';
@@ -21,6 +22,7 @@ export async function listAgents({ ctx }: { ctx: ServiceContext }): Promise<Agen
     pairingExpiresAt: row.pairingExpiresAt?.toISOString() ?? null,
     pairedAt: row.pairedAt?.toISOString() ?? null,
     software: row.software,
+    tooOld: row.software !== null && !isRecentAgent(row.software),
     lastReportAt: row.lastReportAt?.toISOString() ?? null,
   }));
 }

@@ -1,5 +1,5 @@
 import { and, desc, eq, inArray, isNull, ne } from 'drizzle-orm';
-import { profiles, rigReports, type rigs, workHolds } from '@/db/schema/rigs';
+import { agents, profiles, rigReports, type rigs, workHolds } from '@/db/schema/rigs';
 import { acknowledgements, runs } from '@/db/schema/runs';
 import { spools } from '@/db/schema/stock';
 import { EllwandError } from '@/lib/errors';
@@ -10,6 +10,7 @@ import type { Profile } from '@/lib/program/profile';
 import { wireNeededMm } from '@/lib/program/wire-needed';
 import type { Conditions } from '@/lib/protocol/commands';
 import type { RigReport } from '@/lib/protocol/report';
+import { isRecentAgent } from '@/lib/protocol/version';
 import type { PersonActor, ServiceContext } from '../context';
 import { notesInForce } from './acknowledge-notes';
 import type { LockedRun } from './lock-run';
@@ -69,6 +70,15 @@ async function standingOf(ctx: ServiceContext, rig: RigRow, run: RunRow) {
   };
 }
 
+async function isAgentRecent(ctx: ServiceContext, { agentId }: RigRow): Promise<boolean> {
+  if (agentId === null) return false;
+  const [agent] = await ctx.db
+    .select({ software: agents.software })
+    .from(agents)
+    .where(eq(agents.id, agentId));
+  return isRecentAgent(agent?.software ?? null);
+}
+
 type SignalFacts = Pick<StartFacts, 'guard' | 'heater' | 'wireSwitch'>;
 
 /** What is read where something is fitted; without a report, or with one that says "not fitted", nothing is. */
@@ -114,6 +124,7 @@ export async function readStartFacts(
     outOfService: rig.outOfServiceAt !== null,
     heardAgoMs: seen?.connectedAt ? ctx.now.getTime() - seen.heardAt.getTime() : null,
     connected: seen?.report.port === 'open',
+    agentRecent: await isAgentRecent(ctx, rig),
     workHold: standing.workHold || (seen?.report.workHold ?? false),
     trayCleared: standing.trayCleared,
     programHeld: run.programHeldAt !== null,

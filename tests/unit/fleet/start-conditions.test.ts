@@ -10,6 +10,7 @@ const good: StartFacts = {
   outOfService: false,
   heardAgoMs: 900,
   connected: true,
+  agentRecent: true,
   workHold: false,
   trayCleared: true,
   programHeld: true,
@@ -36,6 +37,7 @@ const missing: [string, Partial<StartFacts>, string][] = [
   ['any word of the rig', { heardAgoMs: null }, 'rig-silent'],
   ['a fresh word of the rig', { heardAgoMs: 8_001 }, 'rig-silent'],
   ['the cable', { connected: false }, 'rig-not-connected'],
+  ['an agent that is not too old', { agentRecent: false }, 'agent-too-old'],
   ['free hands', { workHold: true }, 'work-hold'],
   ['an empty tray', { trayCleared: false }, 'tray-not-cleared'],
   ['the program', { programHeld: false }, 'program-not-held'],
@@ -68,6 +70,10 @@ describe('law 5 as the server asks it', () => {
   it.each(['paused', 'held'] as const)('lets a %s run go on, and not start again', (runState) => {
     expect(refuseStart({ ...good, action: 'go-on', runState })).toBeNull();
     expect(refuseStart({ ...good, action: 'start', runState })).toBe('illegal-step');
+  });
+
+  it('lets what has begun be finished by an agent that is too old to start', () => {
+    expect(refuseStart({ ...good, action: 'go-on', runState: 'held', agentRecent: false })).toBeNull();
   });
 
   it('does not let a run go on that has not begun', () => {

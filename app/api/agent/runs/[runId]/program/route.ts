@@ -1,7 +1,7 @@
 import { agentRoute } from '@/lib/http/route';
-import { authenticateAgent } from '@/lib/services/traffic/authenticate-agent';
+import { authenticateRecentAgent } from '@/lib/services/traffic/authenticate-agent';
 import { readRunProgram } from '@/lib/services/traffic/read-run-program';
 
-export const GET = agentRoute<{ runId: string }>(authenticateAgent, ({ ctx, params }) =>
+export const GET = agentRoute<{ runId: string }>(authenticateRecentAgent, ({ ctx, params }) =>
   readRunProgram({ ctx, input: params }),
 );
