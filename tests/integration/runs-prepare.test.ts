@@ -46,6 +46,8 @@ describe('a lot that is given to a rig', () => {
   it('goes back to waiting by the agent’s word, and its rig takes the next tag and a higher fence', async () => {
     const read = async (runId: string) => readRunProgram({ ctx: floor.agent(), input: { runId } });
     await floor.world.query('update rigs set last_tag = 98 where id = $1', [rig(1)]);
+    // The other rig's run gets out of the way of the tag that follows on 99.
+    await floor.world.query('update runs set tag = 50 where rig_id <> $1', [rig(1)]);
     const first = await prepare(floor, rig(1), 3);
     const journal = new TestJournal(floor);
     await journal.tell({ kind: 'program-dropped', rigId: rig(1), runId: first.runId });
@@ -55,6 +57,21 @@ describe('a lot that is given to a rig', () => {
     const [one, two] = [await read(first.runId), await read(again.runId)];
     expect([one.tag, two.tag]).toEqual([99, 1]);
     expect(two.fence).toBeGreaterThan(one.fence);
+  });
+
+  it('has a tag that no run on another rig has, so that swapped cables show in the register', async () => {
+    const tagOn = async (rigId: string) => {
+      const [row] = await floor.world.query<{ tag: number }>(
+        "select tag from runs where rig_id = $1 and state <> 'dropped' order by prepared_at desc limit 1",
+        [rigId],
+      );
+      return row?.tag;
+    };
+    await floor.world.query('update runs set tag = 7 where rig_id = $1', [rig(1)]);
+    await floor.world.query('update rigs set last_tag = 6 where id = $1', [rig(2)]);
+    const { runId } = await prepare(floor, rig(2), 3);
+    expect([await tagOn(rig(1)), await tagOn(rig(2))]).toEqual([7, 8]);
+    await new TestJournal(floor).tell({ kind: 'program-dropped', rigId: rig(2), runId });
   });
 });
 

@@ -23,9 +23,18 @@ export type Prepared = { ok: true; runId: string } | { ok: false; reason: string
 
 type RigRow = typeof rigs.$inferSelect;
 
-/** Tags go round from 1 to 99, so that a register left by an earlier run is not taken for this one's. */
-function nextTag(lastTag: number): number {
-  return (lastTag % 99) + 1;
+/**
+ * Tags go round from 1 to 99, so that a register left by an earlier run is not taken for this one's; those of runs on
+ * other rigs are left out, so that two rigs whose cables are swapped do not pass for each other.
+ */
+async function nextTag(ctx: ServiceContext, { lastTag }: RigRow): Promise<number> {
+  const rows = await ctx.db
+    .select({ tag: runs.tag })
+    .from(runs)
+    .where(inArray(runs.state, [...RUN_ACTIVE, 'released']));
+  const taken = new Set(rows.map(({ tag }) => tag));
+  const inTurn = Array.from({ length: 99 }, (_, step) => ((lastTag + step) % 99) + 1);
+  return inTurn.find((tag) => !taken.has(tag)) ?? (lastTag % 99) + 1;
 }
 
 async function lotToCut(ctx: ServiceContext, lotId: string) {
@@ -93,7 +102,7 @@ export async function prepareRun({
   const { newest, blade, spool } = await equipmentOf(ctx, rig);
   if (spool?.wireId !== line.wireId) throw new EllwandError('wrong-wire');
   if (lot.state !== 'waiting' || lot.pieces < 1 || !newest) throw new EllwandError('illegal-step');
-  const order = { tag: nextTag(rig.lastTag), pieces: lot.pieces, lengthMm: line.lengthMm };
+  const order = { tag: await nextTag(ctx, rig), pieces: lot.pieces, lengthMm: line.lengthMm };
   const { text, durationS, problems } = programOf(newest.profile, order);
   const [problem] = problems;
   if (problem) return refuse(ctx, rig, problem.message);
