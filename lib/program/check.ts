@@ -1,3 +1,4 @@
+import { profileFaults } from './check-profile';
 import type { Profile, RunOrder } from './profile';
 import { readProgram } from './read';
 import type { ProgramProblem, ProgramStep } from './steps';
@@ -12,9 +13,16 @@ function lengthOf(piece: ProgramStep[], { feed }: Profile): number | null {
 
 /**
  * Reads the program (see `readProgram`) and holds it against what was ordered: tag, pieces, length. No problem means
- * that it may be sent. What belongs to the whole program has line number 1.
+ * that it may be sent. What belongs to the profile or the whole program has line number 1.
  */
 export function checkProgram(text: string, profile: Profile, order: RunOrder): ProgramProblem[] {
+  const faults = profileFaults(profile);
+  if (faults.length > 0) {
+    return faults.map(({ path, message }) => ({
+      lineNumber: 1,
+      message: `Profile, ${path.join('.')}: ${message}`,
+    }));
+  }
   const reading = readProgram(text, profile);
   if (!reading.ok) return reading.problems;
   const { tag, pieces } = reading.program;

@@ -30,10 +30,20 @@ function speedWord(unitsPerS: number): string {
 
 const still = (text: string): ProgramLine => ({ text, motionS: 0 });
 
+/**
+ * The firmware goes whole steps, counted from home: on a coarse axis a stroke is longer or shorter than its mm say.
+ * It reckons in single precision, which decides where a position falls between two steps.
+ */
+function strokeMm({ homeMm, stepsPerMm }: Profile['cutAxis'], fromMm: number, toMm: number): number {
+  const stepsAt = (mm: number) => Math.round(Math.fround(Math.fround(mm) - Math.fround(homeMm)) * stepsPerMm);
+  return Math.abs(stepsAt(toMm) - stepsAt(fromMm)) / stepsPerMm;
+}
+
 function press({ cutAxis }: Profile, fromMm: number, toMm: number): ProgramLine {
+  const distanceMm = strokeMm(cutAxis, fromMm, toMm);
   return {
     text: `G1 ${cutAxis.axis}${decimal(toMm, POSITION_DECIMALS)} ${speedWord(cutAxis.speedMmS)}`,
-    motionS: moveDurationS(Math.abs(toMm - fromMm), cutAxis.speedMmS, cutAxis.accelerationMmS2),
+    motionS: moveDurationS(distanceMm, cutAxis.speedMmS, cutAxis.accelerationMmS2),
   };
 }
 

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { profileFaults } from '@/lib/program/check-profile';
 import { profileSchema } from '@/lib/program/profile';
 import { bladeDtoSchema, spoolDtoSchema } from './stock';
 
@@ -23,7 +24,12 @@ export const addRigSchema = z.object({
     .max(999, 'At most 999.'),
 });
 
-export const publishProfileSchema = z.object({ rigId, profile: profileSchema, reason });
+/** A profile that a rig can be run by; an older one that is not stays readable. */
+const soundProfileSchema = profileSchema.superRefine((profile, ctx) => {
+  for (const { path, message } of profileFaults(profile)) ctx.addIssue({ code: 'custom', path, message });
+});
+
+export const publishProfileSchema = z.object({ rigId, profile: soundProfileSchema, reason });
 export const publishNotesSchema = z.object({
   rigId,
   points: z

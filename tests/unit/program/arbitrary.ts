@@ -1,4 +1,5 @@
 import fc from 'fast-check';
+import { profileFaults } from '@/lib/program/check-profile';
 import { type Profile, profileSchema, type RunOrder } from '@/lib/program/profile';
 import { exampleProfile } from './example';
 
@@ -14,29 +15,34 @@ const axes: fc.Arbitrary<[Axis, Axis | null]> = fc.constantFrom<[Axis, Axis | nu
   ['X', null],
 );
 
-/** Four positions anywhere in the travel; cut and standby a tenth of a mm apart or more. */
+/** Shares of a way, even over it; `fc.double` is even over exponents, and so nearly always next to 0. */
+const share = fc.integer({ min: 0, max: 1_000_000 }).map((millionths) => millionths / 1_000_000);
+
+/** Home, standby and park anywhere on one side of the cut, a tenth of a mm from it or more. */
 const cutAxis = fc
   .record({
     lowestMm: real(-60, 10),
     travelMm: real(5, 250),
-    at: fc.tuple(real(0, 1), real(0, 1), real(0, 1), real(0, 1)),
+    closesUpwards: fc.boolean(),
+    cutAt: share.map((of) => of * 0.4),
+    at: fc.tuple(share, share, share),
     speedMmS: real(0.5, 200),
     accelerationMmS2: real(5, 5000),
     homing: fc.constantFrom<('endstop' | 'declared')[]>('endstop', 'declared'),
   })
-  .map(({ travelMm, at, ...rest }) => {
-    const place = (share: number) => rest.lowestMm + Math.min(1, share) * travelMm;
+  .map(({ travelMm, closesUpwards, cutAt, at, ...rest }) => {
+    const place = (of: number) => rest.lowestMm + travelMm * (closesUpwards ? 1 - of : of);
+    const open = (of: number) => place(Math.min(1, cutAt + 0.1 / travelMm + of * (1 - cutAt)));
     return {
       ...rest,
       highestMm: rest.lowestMm + travelMm,
-      homeMm: place(at[0]),
-      standbyMm: place(at[1]),
-      cutMm: place(at[2]),
-      parkMm: place(at[3]),
+      homeMm: open(at[0]),
+      standbyMm: open(at[1]),
+      cutMm: place(cutAt),
+      parkMm: open(at[2]),
       stepsPerMm: 400,
     };
-  })
-  .filter(({ cutMm, standbyMm }) => Math.abs(cutMm - standbyMm) >= 0.1);
+  });
 
 const feed = fc
   .record({
@@ -52,17 +58,16 @@ const feed = fc
 
 const profiles: fc.Arbitrary<Profile> = fc
   .record({ axes, cutAxis, feed, wireSwitch: fc.boolean() })
-  .map(({ axes: [axis, registerAxis], cutAxis: cut, feed: feeding, wireSwitch }) =>
-    profileSchema.parse({
-      ...exampleProfile,
-      cutAxis: { axis, ...cut },
-      feed: feeding,
-      registerAxis,
-      fitted: { ...exampleProfile.fitted, wireSwitch },
-    }),
-  );
+  .map(({ axes: [axis, registerAxis], cutAxis: cut, feed: feeding, wireSwitch }) => ({
+    ...exampleProfile,
+    cutAxis: { axis, ...cut },
+    feed: feeding,
+    registerAxis,
+    fitted: { ...exampleProfile.fitted, wireSwitch },
+  }))
+  .filter((profile) => profileSchema.safeParse(profile).success && profileFaults(profile).length === 0);
 
-/** Any profile that the schema takes, with an order of a length that it allows. */
+/** Any profile that may be published, with an order of a length that it allows. */
 export const profilesWithOrders: fc.Arbitrary<{ profile: Profile; order: RunOrder }> = profiles.chain(
   (profile) =>
     fc
