@@ -1,5 +1,5 @@
 /** `npm run rig -- --tty PATH`: one virtual rig as a program of its own, a place to learn without a machine. */
-import { Command, InvalidArgumentError } from 'commander';
+import { Command, InvalidArgumentError, Option } from 'commander';
 import { readRigConfig } from './config';
 import { liveUntilSignal, reportFailure } from './lifetime';
 import { createVirtualRig, type VirtualRigOptions } from './rig';
@@ -14,6 +14,7 @@ interface Flags {
   speed?: number;
   seed?: number;
   resetOnOpen?: boolean;
+  family?: 'marlin' | 'repetier';
   emergencyParser?: boolean;
   display?: boolean;
   guardSwitch?: string | false;
@@ -46,6 +47,7 @@ function readFlags(): Flags {
     .option('--seed <n>', 'of slip, blade and noise', number)
     .option('--reset-on-open', 'opening the port resets the board')
     .option('--no-reset-on-open', 'a native USB board')
+    .addOption(new Option('--family <family>', 'whose firmware it is').choices(['marlin', 'repetier']))
     .option('--emergency-parser', 'M112 is seen at once')
     .option('--no-emergency-parser', 'M112 waits for its turn')
     .option('--display', 'a display is fitted')
@@ -75,7 +77,7 @@ function withFlags(base: RigInput, flags: Flags): RigInput {
     ...given({ name: flags.name, speed: flags.speed, seed: flags.seed, resetOnOpen: flags.resetOnOpen }),
     firmware: {
       ...firmware,
-      ...given({ emergencyParser: flags.emergencyParser, display: flags.display }),
+      ...given({ family: flags.family, emergencyParser: flags.emergencyParser, display: flags.display }),
       ...given({ guardSwitch, wireSwitch: flags.wireSwitch }),
     },
     mechanics: {

@@ -11,6 +11,7 @@ function perAxis(value: z.ZodNumber, X: number, Y: number, Z: number, E: number)
 }
 
 const firmwareSchema = z.object({
+  family: z.enum(['marlin', 'repetier']).default('marlin'),
   version: z.string().default('2.1.2'),
   emergencyParser: z.boolean().default(true),
   /** `ok N21 P15 B3` in place of `ok`. */

@@ -17,6 +17,7 @@ export function settingsLines(firmware: Firmware): string[] {
 
 /** @returns what the board says once when it has booted. */
 export function bootLines(firmware: Firmware): string[] {
+  if (firmware.settings.family === 'repetier') return ['start', 'Info:External Reset', 'Free RAM:2048'];
   return [
     'start',
     `Marlin ${firmware.settings.version}`,

@@ -1,5 +1,5 @@
 import { parseCommand } from './command';
-import { commandTable, type Run, type Wait } from './commands/table';
+import { commandTable, type Handler, type Run, type Wait } from './commands/table';
 import type { Firmware } from './firmware';
 
 /** Carries out the lines that were taken, one after another, and acknowledges each when it has ended. */
@@ -13,6 +13,10 @@ export class Executor {
     private readonly firmware: Firmware,
     private readonly keepaliveMs: number,
   ) {}
+
+  get idle(): boolean {
+    return this.running === undefined;
+  }
 
   /** Forgets the command under way; it is never acknowledged. */
   clear(): void {
@@ -46,15 +50,18 @@ export class Executor {
   /** Says every keepalive that the command under way is not over. */
   keepAlive(): void {
     if (this.running === undefined || this.firmware.nowMs < this.busyAtMs) return;
-    this.firmware.send('echo:busy: processing');
+    this.firmware.send(this.firmware.family.busy);
     this.busyAtMs = this.firmware.nowMs + this.keepaliveMs;
   }
 
   private start(line: string): Run {
     this.busyAtMs = this.firmware.nowMs + this.keepaliveMs;
     const command = parseCommand(line);
-    const handler = command.name === undefined ? undefined : commandTable.get(command.name);
-    return handler?.(this.firmware, command) ?? this.refuse(command.text);
+    return this.handlerOf(command.name)?.(this.firmware, command) ?? this.refuse(command.text);
+  }
+
+  private handlerOf(name: string | undefined): Handler | undefined {
+    return name === undefined || this.firmware.family.lacks.has(name) ? undefined : commandTable.get(name);
   }
 
   private *refuse(text: string): Run {
@@ -77,9 +84,10 @@ export class Executor {
   }
 
   private finish(answer: string | undefined): void {
-    const { receiver, stepper, settings } = this.firmware;
+    const { receiver, stepper, settings, family } = this.firmware;
     const line = receiver.queue.shift() ?? '';
     this.clearRun();
+    if (family.acksOnReceipt) return;
     const number = /^N(\d+)/.exec(line)?.[1];
     const named = number === undefined ? '' : ` N${number}`;
     const details = settings.advancedOk ? `${named} P${stepper.freeSlots} B${receiver.freeLines - 1}` : '';

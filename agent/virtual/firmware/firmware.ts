@@ -5,6 +5,7 @@ import type { TallyEvent } from '../tally';
 import { bootLines } from './banner';
 import { parseCommand } from './command';
 import { Executor } from './executor';
+import { familyOf, type Family } from './family';
 import { freshMemory, type Memory } from './memory';
 import { Position } from './position';
 import { Receiver } from './receiver';
@@ -19,7 +20,7 @@ export interface FirmwareSinks {
   tally: (event: TallyEvent, atMs: number) => void;
 }
 
-/** The board's firmware, main family: lines in, answers out, moves to the stepper drivers. */
+/** The board's firmware: lines in, answers out, moves to the stepper drivers. */
 export class Firmware {
   state: BoardState = 'off';
   nowMs = 0;
@@ -33,9 +34,11 @@ export class Firmware {
   readonly executor: Executor;
   readonly registerAxis: RigSettings['registerAxis'];
   readonly settings: FirmwareSettings;
+  readonly family: Family;
   private readonly keepaliveMs: number;
   private stateUntilMs = 0;
   private temperatureAtMs = 0;
+  private heardMs = 0;
 
   constructor(
     rig: RigSettings,
@@ -43,6 +46,7 @@ export class Firmware {
     readonly sinks: FirmwareSinks,
   ) {
     this.settings = rig.firmware;
+    this.family = familyOf(rig.firmware);
     this.keepaliveMs = rig.firmware.keepaliveMs * rig.speed;
     this.registerAxis = rig.registerAxis;
     this.memory = freshMemory(this.settings);
@@ -53,7 +57,13 @@ export class Firmware {
     this.stepper = new Stepper(mechanics, this.settings.plannerMoves);
     const emergency = this.settings.emergencyParser ? (code: string) => this.atOnce(code) : undefined;
     this.receiver = new Receiver(
-      { send: (line) => this.send(line), early: (text) => this.early(text), emergency },
+      {
+        send: (line) => this.send(line),
+        early: (text) => this.early(text),
+        received: (text) => this.received(text),
+        emergency,
+      },
+      () => this.family.numbers(),
       this.settings.receiveBytes,
       this.settings.queuedLines,
     );
@@ -71,6 +81,7 @@ export class Firmware {
 
   /** Takes bytes off the line; what the boot loader or a dead board gets is eaten. */
   receive(text: string): void {
+    this.heardMs = this.nowMs;
     let left = text;
     while (left !== '' && this.answers) {
       const before = left.length;
@@ -85,7 +96,7 @@ export class Firmware {
 
   /** @returns when something happens next without a byte coming in, mechanical ms. */
   nextDueAt(): number | undefined {
-    const due = [this.stepper.dueAt(), this.executor.dueAt(), this.limpAt()];
+    const due = [this.stepper.dueAt(), this.executor.dueAt(), this.limpAt(), this.waitsAt()];
     if (this.state === 'booting') due.push(this.stateUntilMs);
     if (this.memory.temperatureEveryMs > 0) due.push(this.temperatureAtMs);
     const known = due.filter((at) => at !== undefined);
@@ -102,6 +113,7 @@ export class Firmware {
     this.executor.pump();
     this.executor.keepAlive();
     this.reportTemperature();
+    this.sayWait();
     this.watchWire();
   }
 
@@ -139,7 +151,7 @@ export class Firmware {
     this.executor.clear();
     this.memory.temperatureEveryMs = 0;
     this.state = 'halted';
-    this.send('Error:Printer halted. kill() called!');
+    this.send(this.family.killed);
     this.sinks.tally({ kind: 'killed' }, this.nowMs);
   }
 
@@ -183,7 +195,7 @@ export class Firmware {
   }
 
   private sendStopped(): void {
-    this.send('Error:Printer stopped due to errors. Fix the error and use M999 to restart.');
+    this.send(this.family.stopped);
   }
 
   private finishBoot(): void {
@@ -196,6 +208,26 @@ export class Firmware {
     if (code === 'M112') this.kill();
     else if (code === 'M410') this.quickStop();
     else this.memory.heatWaitBroken = true;
+  }
+
+  private received(text: string): void {
+    if (!this.family.acksOnReceipt) return;
+    const number = /^N(\d+)/.exec(text)?.[1] ?? this.receiver.lastNumber;
+    this.send(text.includes('M110') ? 'ok' : `ok ${number}`);
+  }
+
+  /** When an idle board says that it waits for a line; wall time. */
+  private waitsAt(): number | undefined {
+    const { waitsEveryMs } = this.family;
+    if (waitsEveryMs === null || this.state !== 'running' || !this.executor.idle) return undefined;
+    return this.heardMs + (waitsEveryMs * this.keepaliveMs) / this.settings.keepaliveMs;
+  }
+
+  private sayWait(): void {
+    const atMs = this.waitsAt();
+    if (atMs === undefined || this.nowMs < atMs) return;
+    this.send('wait');
+    this.heardMs = this.nowMs;
   }
 
   private early(text: string): void {

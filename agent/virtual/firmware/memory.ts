@@ -1,10 +1,11 @@
 import type { FirmwareSettings } from '../settings';
+import { familyOf } from './family';
 
 /** @returns what a board knows after a reset: nothing it was told. */
 export function freshMemory(settings: FirmwareSettings) {
   return {
     coldFeedAllowed: false,
-    softStops: true,
+    softStops: familyOf(settings).softStops,
     jobRunning: false,
     reportsMissingWire: true,
     senderHandlesWire: false,

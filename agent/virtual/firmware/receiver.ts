@@ -1,3 +1,5 @@
+import type { LineNumbers, Verdict } from './numbers';
+
 /** Characters of one line that the board keeps; the rest of a longer line is lost. */
 const LINE_CHARACTERS = 95;
 
@@ -6,27 +8,42 @@ export interface ReceiverLinks {
   send: (line: string) => void;
   /** A whole line has been taken, before it is queued: the early look for `M112` and `M410`. */
   early: (text: string) => void;
+  /** A whole line has been queued; families that acknowledge it now do so. */
+  received: (text: string) => void;
   /** Emergency parser: a command seen among the bytes themselves; `undefined` where none is built in. */
   emergency: ((code: string) => void) | undefined;
 }
+
+const TAKEN: Verdict = { is: 'taken' };
 
 const EMERGENCY = /^\s*(?:N\d+\s*)?(M112|M410|M108)(?!\d)/;
 
 /** Bytes in, numbered and checked lines out, with the board's small buffers. */
 export class Receiver {
-  lastNumber = 0;
   /** Lines taken and not yet carried out, the one under way included. */
   readonly queue: string[] = [];
   private waiting = '';
   private line = '';
   private inComment = false;
   private watched = '';
+  private numbers: LineNumbers;
 
   constructor(
     private readonly links: ReceiverLinks,
+    private readonly makeNumbers: () => LineNumbers,
     private readonly receiveBytes: number,
     private readonly queuedLines: number,
-  ) {}
+  ) {
+    this.numbers = makeNumbers();
+  }
+
+  get lastNumber(): number {
+    return this.numbers.lastNumber;
+  }
+
+  set lastNumber(number: number) {
+    this.numbers.lastNumber = number;
+  }
 
   get freeLines(): number {
     return this.queuedLines - this.queue.length;
@@ -67,13 +84,13 @@ export class Receiver {
     this.inComment = false;
     this.watched = '';
     this.queue.length = 0;
-    if (numbers) this.lastNumber = 0;
+    if (numbers) this.numbers = this.makeNumbers();
   }
 
   /** Empties the receive buffer and asks for the next line again; this `ok` acknowledges nothing. */
   requestResend(): void {
     this.waiting = '';
-    this.links.send(`Resend: ${this.lastNumber + 1}`);
+    this.links.send(this.numbers.askAgain());
     this.links.send('ok');
   }
 
@@ -88,30 +105,21 @@ export class Receiver {
     this.line = '';
     this.inComment = false;
     if (isEmpty) return 'taken';
-    const refusal = text.startsWith('N') ? this.checkNumbered(text) : undefined;
-    if (refusal !== undefined) {
-      this.links.send(`Error:${refusal}${this.lastNumber}`);
+    const verdict = text.startsWith('N') ? this.numbers.judge(text) : TAKEN;
+    if (verdict.is === 'refused') {
+      this.links.send(verdict.error);
       this.requestResend();
       return 'refused';
     }
+    if (verdict.is === 'skipped') {
+      this.links.send(`skip ${verdict.number}`);
+      this.links.send('ok');
+      return 'taken';
+    }
     this.queue.push(text);
+    this.links.received(text);
     this.links.early(text);
     return 'taken';
-  }
-
-  /** Checks number first, then checksum. @returns the refusal's words, or `undefined` for a good line. */
-  private checkNumbered(text: string): string | undefined {
-    const sets = text.includes('M110');
-    const second = sets ? text.indexOf('N', 4) : -1;
-    const number = Number.parseInt(text.slice((second > 0 ? second : 0) + 1), 10);
-    if (!sets && number !== this.lastNumber + 1) return 'Line Number is not Last Line Number+1, Last Line: ';
-    const star = text.lastIndexOf('*');
-    if (star < 0) return 'No Checksum with line number, Last Line: ';
-    if (Number.parseInt(text.slice(star + 1), 10) !== xorOf(text.slice(0, star))) {
-      return 'checksum mismatch, Last Line: ';
-    }
-    this.lastNumber = Number.isNaN(number) ? 0 : number;
-    return undefined;
   }
 
   private watch(text: string): void {
@@ -125,11 +133,4 @@ export class Receiver {
       } else if (this.watched.length < LINE_CHARACTERS) this.watched += character;
     }
   }
-}
-
-/** @returns the XOR over all bytes of a text. */
-function xorOf(text: string): number {
-  let sum = 0;
-  for (let at = 0; at < text.length; at += 1) sum ^= text.charCodeAt(at) & 0xff;
-  return sum;
 }

@@ -92,8 +92,12 @@ export class DrivenRig {
   readonly entries: Entry[] = [];
   readonly answers = new Map<string, CommandAnswer>();
   position = { X: 0, Y: 0, Z: 10, E: 0 };
+  /** Steps that the cut axis is short of where it is said to be. */
+  stepsShort = 0;
   /** Replies given before the ok of the next line that fits. */
   saying: { to: RegExp; lines: string[] } | null = null;
+  /** Takes what would go out, where a real conversation answers instead of the model here. */
+  onSend: (line: Extract<Effect, { do: 'send' | 'interrupt' }>) => void = () => undefined;
   #ids = 0;
 
   constructor(
@@ -132,6 +136,7 @@ export class DrivenRig {
     this.effects.push(effect);
     if (effect.do === 'send') this.sent.push(effect.command);
     if (effect.do === 'interrupt') this.interrupts.push(effect.command);
+    if (effect.do === 'send' || effect.do === 'interrupt') this.onSend(effect);
     if (effect.do === 'answer') this.answers.set(effect.commandId, effect.answer);
     if (effect.do === 'event') this.entries.push({ type: 'event', event: { body: effect.body } });
     if (effect.do === 'note') this.entries.push({ type: 'note', note: effect.note });
@@ -164,7 +169,7 @@ export class DrivenRig {
     }
     const { X, Y, Z, E } = this.position;
     const at = (value: number) => value.toFixed(2);
-    const told = `X:${at(X)} Y:${at(Y)} Z:${at(Z)} E:${at(E)} Count X:0 Y:0 Z:${Math.round(Z * 100)}`;
+    const told = `X:${at(X)} Y:${at(Y)} Z:${at(Z)} E:${at(E)} Count X:0 Y:0 Z:${Math.round(Z * 100) + this.stepsShort}`;
     const said = this.saying?.to.test(command) ? this.saying.lines : [];
     if (said.length > 0) this.saying = null;
     const lines = [...said, ...(/^(M114|G92|G28)/.test(command) ? [told] : []), 'ok'];

@@ -1,49 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { readReply } from '@/agent/dialect/reply';
-import { beginExchange, stepExchange, type Exchange, type ExchangeStep } from '@/agent/link/exchange';
-
-/** One line in flight with a clock that is moved by hand. */
-class Wire {
-  nowMs = 0;
-  exchange: Exchange;
-  readonly written: string[] = [];
-  end: ExchangeStep['end'];
-
-  constructor(
-    order: Partial<Pick<Exchange, 'line' | 'command' | 'expectedMs' | 'needs' | 'keepaliveSeen'>> = {},
-  ) {
-    const begun = beginExchange(
-      { line: 28, command: 'G1 Z0 F600', expectedMs: 1_000, needs: null, keepaliveSeen: false, ...order },
-      0,
-    );
-    this.exchange = begun.exchange;
-    this.take(begun);
-  }
-
-  private take({ exchange, write, end }: ExchangeStep): void {
-    this.exchange = exchange;
-    if (write !== undefined) this.written.push(write);
-    this.end ??= end;
-  }
-
-  hear(...lines: string[]): this {
-    for (const line of lines) {
-      if (this.end) break;
-      this.take(stepExchange(this.exchange, { type: 'reply', reply: readReply(line), nowMs: this.nowMs }));
-    }
-    return this;
-  }
-
-  wait(ms: number): this {
-    const untilMs = this.nowMs + ms;
-    while (!this.end && this.exchange.deadlineMs <= untilMs) {
-      this.nowMs = this.exchange.deadlineMs;
-      this.take(stepExchange(this.exchange, { type: 'deadline', nowMs: this.nowMs }));
-    }
-    this.nowMs = untilMs;
-    return this;
-  }
-}
+import { WireInHand as Wire } from './wire-in-hand';
 
 const LINE = 'N28 G1 Z0 F600*8\n';
 

@@ -3,68 +3,9 @@ import { describe, expect, it } from 'vitest';
 import type { Clock } from '@/agent/clock';
 import { createConversation } from '@/agent/link/conversation';
 import { createEar, greet } from '@/agent/link/greet';
-import { PortClosed, type Port } from '@/agent/link/port';
 import { createSplitter } from '@/agent/link/splitter';
-
-/** A clock whose hands are moved by the test. */
-class HandClock implements Clock {
-  #nowMs = 0;
-  #timers: { atMs: number; call: () => void }[] = [];
-  nowMs = () => this.#nowMs;
-  date = () => new Date(this.#nowMs);
-  after(ms: number, call: () => void) {
-    const timer = { atMs: this.#nowMs + ms, call };
-    this.#timers.push(timer);
-    return () => {
-      this.#timers = this.#timers.filter((other) => other !== timer);
-    };
-  }
-  async pass(ms: number): Promise<void> {
-    const untilMs = this.#nowMs + ms;
-    for (;;) {
-      await settle();
-      const next = this.#timers.filter(({ atMs }) => atMs <= untilMs).sort((a, b) => a.atMs - b.atMs)[0];
-      if (!next) break;
-      this.#timers = this.#timers.filter((timer) => timer !== next);
-      this.#nowMs = Math.max(this.#nowMs, next.atMs);
-      next.call();
-    }
-    this.#nowMs = untilMs;
-  }
-}
-
-async function settle(): Promise<void> {
-  for (let round = 0; round < 20; round += 1) await Promise.resolve();
-}
-
-/** A port whose other end is the test: `answer` says what comes for each line written. */
-class TestPort implements Port {
-  isOpen = true;
-  readonly written: string[] = [];
-  #hear: (text: string) => void = () => undefined;
-  #closed: (reason: string) => void = () => undefined;
-  constructor(private readonly answer: (line: string) => string | null = () => null) {}
-  write(text: string): void {
-    if (!this.isOpen) throw new PortClosed();
-    this.written.push(text);
-    const answer = this.answer(text);
-    if (answer !== null) queueMicrotask(() => this.#hear(answer));
-  }
-  onData(listener: (text: string) => void): void {
-    this.#hear = listener;
-  }
-  onClose(listener: (reason: string) => void): void {
-    this.#closed = listener;
-  }
-  say(text: string): void {
-    this.#hear(text);
-  }
-  close(): Promise<void> {
-    this.isOpen = false;
-    this.#closed('closed');
-    return Promise.resolve();
-  }
-}
+import { HandClock } from './hand-clock';
+import { TestPort } from './test-port';
 
 describe('the line splitter', () => {
   it('gives the same lines however the text is cut', () => {

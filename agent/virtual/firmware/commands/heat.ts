@@ -21,10 +21,16 @@ function* awaitWarm(firmware: Firmware, command: Command): Run {
   }
 }
 
+/** Where the ok has gone out already, the temperature comes on a line of its own. */
+function tellTemperature(firmware: Firmware): string | void {
+  if (!firmware.family.acksOnReceipt) return `ok ${firmware.temperatureText()}`;
+  firmware.send(firmware.temperatureText());
+}
+
 /** The heater. `M105` answers with its ok in front of the temperature, and no second one. */
 export const heatCommands: Commands = {
   M104: (firmware, command) => atOnce(() => setTarget(firmware, command)),
-  M105: (firmware) => atOnce(() => `ok ${firmware.temperatureText()}`),
+  M105: (firmware) => atOnce(() => tellTemperature(firmware)),
   M109: awaitWarm,
   M155: (firmware, command) =>
     atOnce(() => firmware.reportTemperatureEvery((command.words.get('S') ?? 0) * 1000)),

@@ -26,7 +26,8 @@ function feedRefusal(firmware: Firmware, feedMm: number): string | undefined {
   if (!memory.coldFeedAllowed && mechanics.heater.temperatureC < settings.coldBelowC) {
     return 'echo: cold extrusion prevented';
   }
-  return Math.abs(feedMm) > settings.longestFeedMm ? 'echo: too long extrusion prevented' : undefined;
+  const longestMm = Math.min(settings.longestFeedMm, firmware.family.longestFeedMm);
+  return Math.abs(feedMm) > longestMm ? 'echo: too long extrusion prevented' : undefined;
 }
 
 /** @returns the way of each axis in whole steps, put back into mm. */

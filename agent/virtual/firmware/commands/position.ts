@@ -9,6 +9,7 @@ import { atOnce, motionEnded } from './waits';
 export function positionText(firmware: Firmware): string {
   const { position, stepper, stepsPerMm } = firmware;
   const places = AXES.map((axis) => `${axis}:${position.logical(axis).toFixed(2)}`);
+  if (!firmware.family.tellsSteps) return places.join(' ');
   const steps = LINEAR_AXES.map(
     (axis) => `${axis}:${Math.round(stepper.presentMm[axis] * stepsPerMm[axis])}`,
   );
@@ -20,7 +21,13 @@ function rename(firmware: Firmware, command: Command): void {
     const word = command.words.get(axis);
     if (word !== undefined) firmware.stepper.presentMm[axis] += firmware.position.rename(axis, word);
   }
-  firmware.send(positionText(firmware));
+  if (firmware.family.tellsSteps) firmware.send(positionText(firmware));
+  else if (LINEAR_AXES.some((axis) => command.words.has(axis))) firmware.send(offsetText(firmware));
+}
+
+/** @returns how a family that does not tell the position answers `G92` of X, Y or Z. */
+function offsetText({ position }: Firmware): string {
+  return LINEAR_AXES.map((axis) => `${axis}_OFFSET:${position.offsetMm[axis].toFixed(3)}`).join(' ');
 }
 
 /** Runs one axis onto its switch. @returns false when the switch never came. */
@@ -57,7 +64,7 @@ function* home(firmware: Firmware, command: Command): Run {
     }
   }
   firmware.sinks.tally({ kind: 'homed', axes: [...axes] }, firmware.nowMs);
-  firmware.send(positionText(firmware));
+  if (firmware.family.tellsSteps) firmware.send(positionText(firmware));
 }
 
 /** What gives places their names. */

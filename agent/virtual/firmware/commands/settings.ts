@@ -22,6 +22,10 @@ function perAxis(code: string, values: (firmware: Firmware) => Axes): Handler {
 function coldFeed(firmware: Firmware, command: Command): void {
   const lowestC = command.words.get('S');
   const permit = command.words.get('P');
+  if (!firmware.family.zeroAllowsColdFeed) {
+    firmware.memory.coldFeedAllowed = lowestC !== 0;
+    return;
+  }
   if (lowestC !== undefined) firmware.memory.coldFeedAllowed = lowestC === 0;
   if (command.words.has('P')) firmware.memory.coldFeedAllowed = permit !== 0;
   if (lowestC !== undefined || command.words.has('P')) return;

@@ -10,7 +10,7 @@ function setNumber(firmware: Firmware, command: Command): void {
 
 function* revive(firmware: Firmware, command: Command): Run {
   firmware.state = 'running';
-  if (!command.words.get('S')) firmware.receiver.requestResend();
+  if (!firmware.family.acksOnReceipt && !command.words.get('S')) firmware.receiver.requestResend();
 }
 
 /** Numbers, stops and the way back from them. */
