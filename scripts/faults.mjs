@@ -1,6 +1,7 @@
 /**
  * `npm run faults -- --schedules N --seed S [--json FILE]`: seeded faults over a whole Ellwand with eight virtual rigs,
- * judged by their own tally. Exits with 0 only when every schedule holds.
+ * judged by their own tally. Exits with 0 only when every schedule holds. `--mutants` runs agents that lack something and
+ * exits with 0 only when each is given away by its seeds.
  */
 import { chmodSync, mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
@@ -15,7 +16,7 @@ import { repo } from './house/repo.mjs';
 import { ownSettings } from './house/settings.mjs';
 import { Trouble, printTrouble } from './house/trouble.mjs';
 
-const USAGE = 'npm run faults -- [--schedules N] [--seed S] [--json FILE]';
+const USAGE = 'npm run faults -- [--schedules N] [--seed S] [--json FILE] | --mutants';
 const say = console.log;
 const stopping = new AbortController();
 const { signal } = stopping;
@@ -31,8 +32,13 @@ function readWhole(name, text, least) {
 function readArguments(args) {
   const option = /** @type {const} */ ({ type: 'string' });
   try {
-    const { values } = parseArgs({ args, options: { schedules: option, seed: option, json: option } });
+    const mutants = /** @type {const} */ ({ type: 'boolean', default: false });
+    const { values } = parseArgs({
+      args,
+      options: { schedules: option, seed: option, json: option, mutants },
+    });
     return {
+      mutants: values.mutants,
       schedules: readWhole('schedules', values.schedules ?? '25', 1),
       seed: readWhole('seed', values.seed ?? '1', 0),
       json: values.json,
@@ -53,8 +59,9 @@ async function runSchedules(wanted) {
     try {
       const bundle = await bundleEntry(join(repo, 'scripts/faults/main.ts'));
       process.setSourceMapsEnabled(true);
-      const { main } = await import(pathToFileURL(bundle).href);
-      return await main({ ...wanted, house, folder, repo, say });
+      const { main, mainMutants } = await import(pathToFileURL(bundle).href);
+      const grounds = { house, folder, repo, say };
+      return await (wanted.mutants ? mainMutants(grounds) : main({ ...wanted, ...grounds }));
     } finally {
       await house.stop();
     }

@@ -1,64 +1,77 @@
-import { setTimeout as pause } from 'node:timers/promises';
-import { Redis } from 'ioredis';
 import type { House } from '@/scripts/house/house.mjs';
-import type { HouseFault } from './fault';
+import { strikeHouse } from './house-faults';
 import { houseFaultsOf, RIG_FAULTS, scheduleOf } from './plan';
 import { runSchedule, type Outcome } from './wave';
-import { Workshop } from './workshop';
+import { BENCH_KINDS, Workshop } from './workshop';
 
-/** Schedules at a time; as many rigs. */
-const BENCHES = 8;
 /** A spool lasts so many waves. */
 const WAVES_PER_SPOOL = 30;
+const AGENT = ['scripts/run.mjs', 'agent/main.ts', '--'] as const;
 
-export interface Wanted {
+export interface Grounds {
   /** Running, without demo. */
   house: House;
   /** For everything that the benches keep. */
   folder: string;
   /** The checkout, from which agents are started. */
   repo: string;
+  say: (text: string) => void;
+}
+
+export interface Wanted extends Grounds {
   schedules: number;
   /** The first seed; the next ones follow it. */
   seed: number;
   onOutcome: (outcome: Outcome) => void;
-  say: (text: string) => void;
 }
 
-/** Runs schedules by seed on a house, eight rigs at a time. */
-export async function runFaults(wanted: Wanted): Promise<Outcome[]> {
-  const { house, folder, repo, schedules, say } = wanted;
-  const outcomes: Outcome[] = [];
-  const benches = Math.min(BENCHES, schedules);
+/** Opens a workshop with these benches in the house, and closes it whatever happens. */
+export async function inWorkshop<Result>(
+  { house, folder, repo, say }: Grounds,
+  benches: Parameters<typeof Workshop.open>[1],
+  work: (workshop: Workshop) => Promise<Result>,
+): Promise<Result> {
   const databaseUrl = house.env.DATABASE_URL ?? '';
   const workshop = await Workshop.open({ url: house.url, databaseUrl, folder, repo }, benches);
   try {
     if (!workshop.ownDisks) say('No small disk can be mounted here: no disk is filled up.');
-    for (let first = 0, wave = 1; first < schedules; first += benches, wave += 1) {
-      if (wave % WAVES_PER_SPOOL === 0) {
-        await Promise.all(workshop.benches.map((bench) => workshop.loadNewSpool(bench)));
-      }
-      outcomes.push(...(await runWave(wanted, workshop, first)));
-    }
+    return await work(workshop);
   } finally {
     await workshop.close();
   }
-  return outcomes;
 }
 
-/** The schedules from `first` on, one on each bench, while the house is struck by what their first seed says. */
+/** Runs schedules by seed on a house, as many rigs at a time as there are kinds; a seed always meets the same kind. */
+export function runFaults(wanted: Wanted): Promise<Outcome[]> {
+  const { schedules, seed } = wanted;
+  const seeds = Array.from({ length: schedules }, (_, index) => seed + index);
+  const kinds = seeds.slice(0, BENCH_KINDS).map((own) => own % BENCH_KINDS);
+  const benches = kinds.map((kind) => ({ kind, agentProgram: AGENT }));
+  return inWorkshop(wanted, benches, async (workshop) => {
+    const outcomes: Outcome[] = [];
+    for (let wave = 0; wave * BENCH_KINDS < schedules; wave += 1) {
+      if (wave % WAVES_PER_SPOOL === WAVES_PER_SPOOL - 1) {
+        await Promise.all(workshop.benches.map((bench) => workshop.loadNewSpool(bench)));
+      }
+      const own = seeds.slice(wave * BENCH_KINDS, (wave + 1) * BENCH_KINDS);
+      outcomes.push(...(await runWave(wanted, workshop, own)));
+    }
+    return outcomes;
+  });
+}
+
+/** One schedule on each bench, while the house is struck by what their first seed says. */
 async function runWave(
-  { house, schedules, seed, onOutcome, say }: Wanted,
+  { house, onOutcome, say }: Wanted,
   workshop: Workshop,
-  first: number,
+  seeds: readonly number[],
 ): Promise<Outcome[]> {
-  const kinds = RIG_FAULTS.filter((kind) => kind !== 'disk-full' || workshop.ownDisks);
-  const strikes = strikeHouse(house, houseFaultsOf(seed + first), say);
-  const benches = workshop.benches.slice(0, schedules - first);
+  const strikes = strikeHouse(house, houseFaultsOf(seeds[0] ?? 0), say);
   const outcomes = await Promise.all(
-    benches.map(async (bench, index) => {
-      const schedule = scheduleOf(seed + first + index, kinds);
-      const outcome = await runSchedule(workshop, bench, schedule, strikes.begin);
+    seeds.map(async (seed) => {
+      const bench = workshop.benches.find(({ kind }) => kind === seed % BENCH_KINDS);
+      if (!bench) throw new Error(`No bench is of the kind that seed ${seed} wants`);
+      const outcome = await runSchedule(workshop, bench, scheduleOf(seed, faultsOn(workshop)), strikes.begin);
       onOutcome(outcome);
       return outcome;
     }),
@@ -67,42 +80,7 @@ async function runWave(
   return outcomes;
 }
 
-/** The house's faults of one wave, told from its first line on. */
-function strikeHouse(house: House, faults: ReturnType<typeof houseFaultsOf>, say: (text: string) => void) {
-  let begin: () => void = () => undefined;
-  const begun = new Promise<void>((resolve) => {
-    begin = resolve;
-  });
-  const over = begun.then(async () => {
-    let passedMs = 0;
-    for (const { afterMs, fault } of faults) {
-      await pause(afterMs - passedMs);
-      passedMs = afterMs;
-      say(`house: ${fault.kind}`);
-      await strike(house, fault);
-    }
-  });
-  return { begin: () => begin(), over };
-}
-
-async function strike(house: House, { kind }: HouseFault): Promise<void> {
-  switch (kind) {
-    case 'server-killed':
-      return house.child('web').crash();
-    case 'worker-killed':
-      return house.child('worker').crash();
-    case 'redis-restarted':
-      return house.child('Redis').crash();
-    case 'database-restarted':
-      return house.child('PostgreSQL').crash();
-    case 'redis-emptied': {
-      const redis = new Redis(house.env.REDIS_URL ?? '', { maxRetriesPerRequest: 1 });
-      redis.on('error', () => undefined);
-      try {
-        await redis.flushall();
-      } finally {
-        redis.disconnect();
-      }
-    }
-  }
+/** The kinds of fault that this computer can bring about. */
+export function faultsOn({ ownDisks }: Workshop) {
+  return RIG_FAULTS.filter((kind) => kind !== 'disk-full' || ownDisks);
 }

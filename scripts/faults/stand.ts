@@ -33,6 +33,8 @@ interface StandParts {
   server: string;
   /** The checkout. */
   repo: string;
+  /** What Node is to run as the agent, with the arguments before its own. */
+  agentProgram: readonly string[];
   pairingCode: string;
   settings: RigInput;
   /** The agent's data lie on a small disk of their own, which can be filled up. */
@@ -111,7 +113,7 @@ export class Stand {
   startAgent(): void {
     if (this.#agent || this.#isDown) return;
     const log = openSync(join(this.parts.folder, 'agent.log'), 'a');
-    const args = [...LEAN, 'scripts/run.mjs', 'agent/main.ts', '--', '--config', this.configPath];
+    const args = [...LEAN, ...this.parts.agentProgram, '--config', this.configPath];
     const agent = spawn('setpriv', ['--pdeathsig', 'KILL', process.execPath, ...args], {
       cwd: this.parts.repo,
       stdio: ['ignore', log, log],

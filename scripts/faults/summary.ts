@@ -2,13 +2,14 @@ import type { Outcome } from './wave';
 
 const TRACE_MOST = 60;
 
-function holds({ done, problems }: Outcome): boolean {
+/** Whether a schedule ended with its batch done and nothing to be said against it. */
+export function isHeld({ done, problems }: Outcome): boolean {
   return done && problems.length === 0;
 }
 
 /** What went wrong in one schedule, with the end of its trace; null when it held. */
 export function describeFailure(outcome: Outcome): string | null {
-  if (holds(outcome)) return null;
+  if (isHeld(outcome)) return null;
   const { schedule, problems, trace } = outcome;
   const { seed, pieces, lengthMm } = schedule;
   const shown = trace.slice(-TRACE_MOST);
@@ -46,13 +47,13 @@ export function summaryOf(outcomes: readonly Outcome[]) {
         Object.entries(told).flatMap(([reason, count]) => Array.from({ length: count }, () => reason)),
       ),
     ),
-    failedSeeds: outcomes.filter((outcome) => !holds(outcome)).map(({ schedule }) => schedule.seed),
+    failedSeeds: outcomes.filter((outcome) => !isHeld(outcome)).map(({ schedule }) => schedule.seed),
     msPerSchedule: Math.round(sum(outcomes, ({ tookMs }) => tookMs) / Math.max(1, outcomes.length)),
   };
   const { schedules, lost, doubled, untold, moves } = figures;
   return {
     figures,
     line: `schedules ${schedules}, lost ${lost}, doubled ${doubled}, untold ${untold}, moves ${moves}`,
-    holds: outcomes.length > 0 && outcomes.every(holds),
+    holds: outcomes.length > 0 && outcomes.every(isHeld),
   };
 }

@@ -27,7 +27,16 @@ import type { Order } from './truth';
 const SPOOL_MM = 100_000;
 const COLOURS = ['BK', 'BN', 'RD', 'OG', 'YE', 'GN', 'BU', 'VT'];
 
+/** What a bench is to have. `kind` says what is fitted, from 0 to `BENCH_KINDS` - 1. */
+export interface WantedBench {
+  kind: number;
+  agentProgram: readonly string[];
+}
+
+export const BENCH_KINDS = 8;
+
 export interface Bench {
+  kind: number;
   stand: Stand;
   wireId: string;
   profile: Profile;
@@ -58,7 +67,7 @@ export class Workshop {
 
   static async open(
     house: { url: string; databaseUrl: string; folder: string; repo: string },
-    benches: number,
+    wanted: readonly WantedBench[],
   ) {
     const { db, pool } = openDatabase(house.databaseUrl, { connectTimeoutMs: 1_500 });
     // A server that is restarted cuts them all; each call tells it again.
@@ -66,7 +75,7 @@ export class Workshop {
     const workshop = new Workshop(house.url, house.folder, house.repo, db, pool);
     try {
       await workshop.#found();
-      for (let index = 0; index < benches; index += 1) await workshop.#addBench(index);
+      for (const bench of wanted) await workshop.#addBench(bench);
       return workshop;
     } catch (error) {
       await workshop.close();
@@ -179,21 +188,23 @@ export class Workshop {
     return { db: this.db, now: new Date(), requestId: 'faults' };
   }
 
-  async #addBench(index: number): Promise<void> {
+  async #addBench({ kind: index, agentProgram }: WantedBench): Promise<void> {
     const ctx = this.now();
-    const name = `Rig ${index + 1}`;
+    const number = this.benches.length + 1;
+    const name = `Rig ${number}`;
     const profile = profileOf(index);
-    const kind = { gaugeAwg: 30, conductor: 'silvered copper', insulation: 'ETFE', outsideDiameterMm: 0.5 };
-    const colour = COLOURS[index % COLOURS.length];
-    const { id: wireId } = await addWire({ ctx, input: { ...kind, colour } });
-    const { id: rigId } = await addRig({ ctx, input: { name, benchOrder: index + 1 } });
+    const made = { gaugeAwg: 26 + 2 * Math.floor(number / COLOURS.length), conductor: 'silvered copper' };
+    const sheath = { insulation: 'ETFE', outsideDiameterMm: 0.5 };
+    const colour = COLOURS[number % COLOURS.length];
+    const { id: wireId } = await addWire({ ctx, input: { ...made, ...sheath, colour } });
+    const { id: rigId } = await addRig({ ctx, input: { name, benchOrder: number } });
     await publishProfile({ ctx, input: { rigId, profile, reason: 'first profile' } });
     const fullText = 'Shut the guard, keep hands out of the jaws, know where the hardware stop is.';
     await publishNotes({ ctx, input: { rigId, points: ['The guard is shut.'], fullText } });
-    const blade = await addBlade({ ctx, input: { label: `B-${index}`, model: 'flush cutter' } });
+    const blade = await addBlade({ ctx, input: { label: `B-${number}`, model: 'flush cutter' } });
     await fitBlade({ ctx, input: { bladeId: blade.id, rigId } });
-    const offer = await addAgent({ ctx, input: { name: `Agent ${index + 1}`, rigIds: [rigId] } });
-    const folder = join(this.folder, `bench-${index + 1}`);
+    const offer = await addAgent({ ctx, input: { name: `Agent ${number}`, rigIds: [rigId] } });
+    const folder = join(this.folder, `bench-${number}`);
     mkdirSync(folder, { recursive: true });
     const stand = await Stand.open({
       rigName: name,
@@ -201,11 +212,12 @@ export class Workshop {
       folder,
       server: this.server,
       repo: this.repo,
+      agentProgram,
       pairingCode: offer.code,
-      settings: { ...settingsOf(profile, index), seed: index + 1, name },
+      settings: { ...settingsOf(profile, index), seed: number, name },
       ownDisk: this.ownDisks,
     });
-    const bench = { stand, wireId, profile };
+    const bench = { kind: index, stand, wireId, profile };
     this.benches.push(bench);
     await this.loadNewSpool(bench);
   }

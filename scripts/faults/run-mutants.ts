@@ -1,0 +1,35 @@
+import { MUTANTS } from './mutants';
+import { bundleMutant } from './mutate';
+import { scheduleOf } from './plan';
+import { faultsOn, inWorkshop, type Grounds } from './run-faults';
+import { isHeld } from './summary';
+import { runSchedule } from './wave';
+import { BENCH_KINDS } from './workshop';
+
+/** @returns names and seeds of mutants that no schedule gave away: the harness, or the seed, is blind to them */
+export async function runMutants(grounds: Grounds, wanted = MUTANTS): Promise<string[]> {
+  const trials = await Promise.all(
+    wanted.flatMap((mutant) =>
+      mutant.seeds.map(async (seed) => ({ mutant, seed, bundle: await bundleMutant(mutant, grounds.repo) })),
+    ),
+  );
+  const benches = trials.map(({ seed, bundle }) => ({ kind: seed % BENCH_KINDS, agentProgram: [bundle] }));
+  return inWorkshop(grounds, benches, async (workshop) => {
+    const unseen = await Promise.all(
+      trials.map(async ({ mutant, seed }, index) => {
+        const bench = workshop.benches[index];
+        if (!bench) throw new Error('There are fewer benches than trials');
+        const outcome = await runSchedule(
+          workshop,
+          bench,
+          scheduleOf(seed, faultsOn(workshop)),
+          () => undefined,
+        );
+        const name = `${mutant.name}, seed ${seed}`;
+        grounds.say(`${name}: ${isHeld(outcome) ? 'NOT SEEN' : outcome.problems.join('; ')}`);
+        return isHeld(outcome) ? [name] : [];
+      }),
+    );
+    return unseen.flat();
+  });
+}
