@@ -7,19 +7,24 @@ export interface Splitter {
   clear(): void;
 }
 
+/** The text in pieces of 512 characters, the last of 1 to 512; no piece of no text. */
+function inPieces(text: string): string[] {
+  const pieces: string[] = [];
+  for (let at = 0; at < text.length; at += LONGEST_LINE_CHARACTERS) {
+    pieces.push(text.slice(at, at + LONGEST_LINE_CHARACTERS));
+  }
+  return pieces;
+}
+
 /** Lines end with LF, CR or both; a line longer than 512 characters is noise and given in pieces of that size. */
 export function createSplitter(): Splitter {
   let rest = '';
   return {
     push(chunk) {
       const parts = (rest + chunk).split(/\r\n|\n|\r/);
-      rest = parts.pop() ?? '';
-      const lines = parts.filter((part) => part !== '');
-      while (rest.length > LONGEST_LINE_CHARACTERS) {
-        lines.push(rest.slice(0, LONGEST_LINE_CHARACTERS));
-        rest = rest.slice(LONGEST_LINE_CHARACTERS);
-      }
-      return lines;
+      const begun = inPieces(parts.pop() ?? '');
+      rest = begun.pop() ?? '';
+      return [...parts.flatMap(inPieces), ...begun];
     },
     clear() {
       rest = '';
