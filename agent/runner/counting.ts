@@ -1,6 +1,7 @@
 import type { PositionReport } from '@/agent/dialect/position';
 import type { Reply } from '@/agent/dialect/reply';
 import { pieceLengthMm } from './measures';
+import { near } from './standing';
 import { stepsOf, type Cursor, type Run } from './state';
 import type { Turn } from './turn';
 
@@ -15,10 +16,15 @@ export function positionIn(replies: readonly Reply[]): PositionReport | null {
   return told?.kind === 'position' ? told.position : null;
 }
 
-/** Whether the rig shows this number in its register; without one its ok is all there is. */
+/**
+ * Whether the rig shows this number in its register and a feed of zero, which the same line sets: a line may arrive
+ * with a digit too many. Without a register its ok is all there is.
+ */
 export function shows(turn: Turn, register: number | null, { sure, replies }: Answered): boolean {
   const axis = turn.state.profile.registerAxis;
-  return axis === null || register === null ? sure : positionIn(replies)?.[axis] === register;
+  const position = positionIn(replies);
+  if (position && !near(position.E, 0)) return false;
+  return axis === null || register === null ? sure : position?.[axis] === register;
 }
 
 /** Law 1: counted once, and only when the rig said so. */

@@ -14,7 +14,11 @@ export interface NextLine {
   needs: ReplyKind | null;
 }
 
-const NEEDS: Partial<Record<ProgramStep['kind'], ReplyKind>> = { ask: 'position', register: 'position' };
+const NEEDS: Partial<Record<ProgramStep['kind'], ReplyKind>> = {
+  declare: 'position',
+  ask: 'position',
+  register: 'position',
+};
 
 /** The program's own register line holds the count 0; after a new homing it must hold what is cut. */
 function stepAt(run: Run, cursor: Cursor): ProgramStep | null {
@@ -46,7 +50,7 @@ function pollLine({ profile, polledMs }: RigState, nowMs: number): NextLine | nu
     return { purpose: { for: 'switches' }, command: 'M119', expectedMs: 0, needs: 'switches' };
   }
   if (heater && due(polledMs.heaters)) {
-    return { purpose: { for: 'heaters' }, command: 'M105', expectedMs: 0, needs: null };
+    return { purpose: { for: 'heaters' }, command: 'M105', expectedMs: 0, needs: 'temperature' };
   }
   return null;
 }

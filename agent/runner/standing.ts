@@ -16,7 +16,8 @@ export type Standing =
   | { is: 'ahead' }
   | { is: 'nowhere' };
 
-function near(value: number, target: number): boolean {
+/** Whether a printed coordinate is this one. */
+export function near(value: number, target: number): boolean {
   return Math.abs(value - target) <= PRINTED_MM;
 }
 

@@ -3,7 +3,7 @@ import type { HoldReason, MisfeedCause } from '@/lib/fleet/run';
 import type { ProgramStep } from '@/lib/program/steps';
 import { countPiece, isTrimCut, noteTrim, positionIn, shows, type Answered } from './counting';
 import { beginSettle, requireHome, voidOpenCut } from './holding';
-import { atCut, atStandby, fedWhole } from './standing';
+import { atCut, atStandby, fedWhole, near } from './standing';
 import { stepsOf, type Cursor } from './state';
 import type { Turn } from './turn';
 
@@ -42,6 +42,8 @@ export function onStep(turn: Turn, cursor: Cursor, step: ProgramStep, answered: 
     turn.setRun({ jawsClosedMs: turn.nowMs });
     if (isTrimCut(run, cursor)) noteTrim(turn);
   }
+  // A place is named before anything moves by it: said again until the rig shows the right one.
+  if (step.kind === 'declare' && !isDeclared(turn, step.cutAxisMm, answered)) return;
   if (step.kind === 'ask' && !onAsk(turn, cursor, answered)) return;
   if (step.kind === 'register') {
     // A line whose answer was lost is said again: it sets the same numbers.
@@ -51,6 +53,11 @@ export function onStep(turn: Turn, cursor: Cursor, step: ProgramStep, answered: 
   if (turn.state.run?.mode === 'moving') advance(turn, cursor);
   // A trim that is broken off is not gone on with, but whether its cut was made is charged.
   else if (cursor.part === 'trim') turn.setRun({ cursor: { ...cursor, index: cursor.index + 1 } });
+}
+
+function isDeclared(turn: Turn, cutAxisMm: number, { replies }: Answered): boolean {
+  const position = positionIn(replies);
+  return position !== null && near(position[turn.state.profile.cutAxis.axis], cutAxisMm);
 }
 
 /** Whether the rig is where it must be; if not, the run is held. False also when it is to be asked again. */

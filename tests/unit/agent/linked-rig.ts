@@ -55,6 +55,8 @@ export class LinkedRig {
     });
     this.core.switchOn();
     this.core.openPort();
+    // The board has booted; from here on both clocks are one.
+    this.clock.moveTo(2_000);
     this.core.advanceTo(2_000);
     this.#out = '';
     this.driven = new DrivenRig(profile, programFor(profile, { pieces, lengthMm }));
@@ -103,7 +105,7 @@ export class LinkedRig {
     for (;;) {
       await settle();
       if (happened()) return;
-      const next = Math.min(this.clock.nextAtMs() ?? endMs, (this.core.nextDueAt() ?? endMs) - 2_000);
+      const next = Math.min(this.clock.nextAtMs() ?? endMs, this.core.nextDueAt() ?? endMs);
       if (next >= endMs) throw new Error(`it did not happen: ${this.summary()}`);
       await this.#to(Math.max(next, this.clock.nowMs()));
     }
@@ -175,7 +177,7 @@ export class LinkedRig {
   }
 
   #catchUp(): void {
-    this.core.advanceTo(this.clock.nowMs() + 2_000);
+    this.core.advanceTo(this.clock.nowMs());
     this.#deliver();
   }
 
