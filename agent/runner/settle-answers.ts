@@ -1,6 +1,14 @@
 import type { PositionReport } from '@/agent/dialect/position';
 import { countPiece, isTrimCut, noteTrim, positionIn, shows, type Answered } from './counting';
-import { doubtOrHold, requireHome, settled, voidOpenCut } from './holding';
+import {
+  answerWorkHold,
+  doubtOrHold,
+  enterHold,
+  finishRun,
+  requireHome,
+  settled,
+  voidOpenCut,
+} from './holding';
 import { registerStep } from './next-line';
 import { whereStands } from './standing';
 import type { SettleStage } from './state';
@@ -29,6 +37,7 @@ export function onSettle(turn: Turn, stage: SettleStage, answered: Answered): vo
 function motionEnded(turn: Turn, active: boolean): void {
   const { run } = turn.state;
   if (!active || !run) return settled(turn);
+  answerWorkHold(turn);
   if (run.mode === 'settling') {
     turn.setRun({ jawsClosedMs: turn.nowMs });
     if (isTrimCut(run, run.cursor)) noteTrim(turn);
@@ -50,7 +59,7 @@ function resolve(turn: Turn, position: PositionReport): void {
     case 'lost':
       return doubtOrHold(turn, 'firmware-reset');
     case 'foreign':
-      return doubtOrHold(turn, 'register-foreign');
+      return holdForeign(turn);
     case 'ahead':
       return doubtOrHold(turn, 'journal-damaged');
     case 'nowhere':
@@ -61,8 +70,29 @@ function resolve(turn: Turn, position: PositionReport): void {
       if (standing.counted > run.cut) countPiece(turn, standing.counted);
       else if (run.openCut !== null) voidOpenCut(turn);
       turn.setRun({ cursor: standing.cursor });
+      leaveForeign(turn);
       return settled(turn);
   }
+}
+
+/**
+ * Another run's register is most likely another rig's, by swapped cables. What was open is not doubted: the right
+ * board still knows. Until it is asked nothing moves, for `unknown` refuses every way on.
+ */
+function holdForeign(turn: Turn): void {
+  const { run } = turn.state;
+  turn.set({ settle: null });
+  if (run?.stop && run.openCut === null) return finishRun(turn, 'stopped');
+  requireHome(turn, true);
+  turn.setRun({ unknown: true });
+  enterHold(turn, 'register-foreign');
+}
+
+/** The right board is back: what is left is what any lost link leaves. */
+function leaveForeign(turn: Turn): void {
+  if (turn.state.run?.hold !== 'register-foreign') return;
+  turn.setRun({ hold: null });
+  enterHold(turn, 'link-lost', 'The rig with this run is back.');
 }
 
 /** Cut and not registered: written down at once, which moves nothing, unless the firmware refused something. */

@@ -71,7 +71,7 @@ export const HOLD_WORDS: Record<HoldReason, { title: string; happened: string; b
   'register-foreign': {
     title: 'not this run',
     happened: 'the rig remembers another run',
-    bring: 'look into the tray; ask a maintainer',
+    bring: 'look whether two rigs’ cables are swapped; else ask a maintainer',
   },
   'agent-restarted': {
     title: 'agent restarted',
