@@ -8,6 +8,9 @@ import type { Purpose } from './state';
 import { onStep } from './step-answers';
 import type { Turn } from './turn';
 
+/** A run does not go on for longer than this without a temperature where a heater is fitted. */
+const HEATER_UNTOLD_MS = 10_000;
+
 /** What the answer to the line in flight means. */
 export function onAnswered(turn: Turn, purpose: Purpose, answered: Answered): void {
   switch (purpose.for) {
@@ -20,11 +23,7 @@ export function onAnswered(turn: Turn, purpose: Purpose, answered: Answered): vo
     case 'switches':
       return onSwitches(turn, answered.replies);
     case 'heaters':
-      turn.set({
-        signals: readHeaters(turn.state.signals, turn.state.profile, answered.replies, turn.at),
-        polledMs: { ...turn.state.polledMs, heaters: turn.nowMs },
-      });
-      return watchFaults(turn);
+      return onHeaters(turn, answered.replies);
     case 'let-go':
       return onLetGo(turn);
   }
@@ -57,9 +56,29 @@ function onSwitches(turn: Turn, replies: readonly Reply[]): void {
   watchFaults(turn);
 }
 
+function onHeaters(turn: Turn, replies: readonly Reply[]): void {
+  const { signals, profile, polledMs, run, coldC, heaterToldMs } = turn.state;
+  const active = run && run.mode !== 'holding' && run.mode !== 'ended';
+  const next = readHeaters(signals, profile, replies, turn.at, active ? coldC : null);
+  const told = next.heater.reading !== 'unknown';
+  turn.set({ signals: next, polledMs: { ...polledMs, heaters: turn.nowMs } });
+  if (told) turn.set({ heaterToldMs: turn.nowMs });
+  else if (run?.mode === 'moving' && turn.nowMs - heaterToldMs >= HEATER_UNTOLD_MS) {
+    return beginSettle(turn, {
+      to: 'held',
+      reason: 'heater-warm',
+      note: 'The rig does not tell its heaters.',
+    });
+  }
+  watchFaults(turn);
+}
+
 function watchFaults(turn: Turn): void {
   const { run, signals, profile } = turn.state;
   const fault = faultOf(signals);
+  // A heater that warms where nothing moves is as urgent; a guard is open there by right.
+  const stands = run?.mode === 'paused' || run?.mode === 'held';
+  if (fault === 'heater-warm' && stands) return enterHold(turn, fault);
   if (!fault || run?.mode !== 'moving') return;
   if (needsFaultStop(fault, signals, profile)) return stopAtOnce(turn, fault);
   beginSettle(turn, { to: 'held', reason: fault, note: '' });

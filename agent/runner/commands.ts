@@ -67,8 +67,16 @@ function showCode(turn: Turn, code: string): void {
 function startRun(turn: Turn, { personId, id }: MovingCommand): void {
   const { run, rigId } = turn.state;
   if (!run) return;
+  noteCold(turn, null);
   turn.event({ kind: 'run-started', rigId, runId: run.order.runId, personId, commandId: id });
   beginHoming(turn, true);
+}
+
+/** From here on a heater that rises is one that warms. */
+function noteCold(turn: Turn, since: number | null): void {
+  const { heater } = turn.state.signals;
+  if (!('actualC' in heater)) return;
+  turn.set({ coldC: Math.min(since ?? heater.actualC, heater.actualC), heaterToldMs: turn.nowMs });
 }
 
 function goOn(
@@ -78,6 +86,7 @@ function goOn(
   const { run, rigId } = turn.state;
   if (!run) return;
   const { runId, firstPieces, pieces } = run.order;
+  noteCold(turn, turn.state.coldC);
   turn.setRun({ hold: null, refusal: null, stillSinceMs: null });
   if (run.hold === 'first-pieces') turn.setRun({ measureAt: null });
   turn.event({ kind: 'run-went-on', rigId, runId, personId, commandId: id });

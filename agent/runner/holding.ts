@@ -5,7 +5,13 @@ import type { Turn } from './turn';
 
 /** Reasons that say less than any other: a later one takes their place, and they take nobody's. */
 const WEAK: readonly HoldReason[] = ['agent-restarted', 'link-lost', 'steppers-released', 'work-hold'];
-const STRONG: readonly HoldReason[] = ['doubt', 'register-foreign', 'position-wrong', 'journal-damaged'];
+const STRONG: readonly HoldReason[] = [
+  'doubt',
+  'register-foreign',
+  'position-wrong',
+  'journal-damaged',
+  'heater-warm',
+];
 
 function takesOver(reason: HoldReason, from: HoldReason): boolean {
   if (reason === from || WEAK.includes(reason)) return false;

@@ -29,6 +29,8 @@ export function restoreRig({ rigId, profile, fence, challenge, nowMs, memory, he
     halted: false,
     firmware: null,
     signals: unreadSignals(inForce),
+    coldC: null,
+    heaterToldMs: nowMs,
     polledMs: { switches: 0, heaters: 0 },
     outstanding: null,
     settle: null,

@@ -44,12 +44,16 @@ function readWire({ fitted }: Profile, told: ReadonlyMap<string, boolean>, readA
     : { reading: triggered ? 'present' : 'missing', readAt };
 }
 
-/** Folds the answer of `M105` into the signals. */
+/** A heater that is so much warmer than when the run began is warming, however cold it still is; °C. */
+const HEATER_RISE_C = 20;
+
+/** Folds the answer of `M105` into the signals. `coldC`: what the heaters were when the run began, null without one. */
 export function readHeaters(
   signals: Signals,
   profile: Profile,
   replies: readonly Reply[],
   readAt: string,
+  coldC: number | null = null,
 ): Signals {
   if (!profile.fitted.heater) return { ...signals, heater: { reading: 'not fitted' } };
   const told = replies.flatMap((reply) =>
@@ -57,7 +61,8 @@ export function readHeaters(
   );
   const last = told.at(-1);
   if (!last) return { ...signals, heater: { reading: 'unknown' } };
-  const reading = last.targetC > 0 ? 'on' : last.actualC > HEATER_WARM_C ? 'warm' : 'off';
+  const warmAboveC = Math.min(HEATER_WARM_C, (coldC ?? HEATER_WARM_C) + HEATER_RISE_C);
+  const reading = last.targetC > 0 ? 'on' : last.actualC > warmAboveC ? 'warm' : 'off';
   return { ...signals, heater: { reading, ...last, readAt } };
 }
 

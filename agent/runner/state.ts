@@ -84,6 +84,10 @@ export interface RigState {
   readonly halted: boolean;
   readonly firmware: Firmware | null;
   readonly signals: Signals;
+  /** The lowest that the heaters were when this run began to move or went on, °C. */
+  readonly coldC: number | null;
+  /** When a temperature was last told, epoch ms. */
+  readonly heaterToldMs: number;
   readonly polledMs: { readonly switches: number; readonly heaters: number };
   readonly outstanding: Purpose | null;
   readonly settle: SettleStage | null;
