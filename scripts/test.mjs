@@ -82,11 +82,12 @@ async function beforeTheBrowser() {
   return [...lanes, await nothingLeft('unit and integration')].reduce(addTally);
 }
 
-/** @returns {Promise<Tally>} the fixed seeds of the fault harness */
+/** @returns {Promise<Tally>} the fixed seeds of the fault harness, and agents that lack something on theirs */
 async function underFaults() {
   const program = join(repo, 'scripts/faults.mjs');
   const held = await check('faults', process.execPath, [program, '--schedules', '25', '--seed', '1']);
-  return addTally(held, await nothingLeft('faults'));
+  const seen = await check('mutants', process.execPath, [program, '--mutants']);
+  return [held, seen, await nothingLeft('faults')].reduce(addTally);
 }
 
 /**

@@ -18,7 +18,7 @@ export const MUTANTS: readonly Mutant[] = [
         replace: 'const counted: ReturnType<typeof registerOf> = run.cut;',
       },
     ],
-    seeds: [],
+    seeds: [805, 2109],
   },
   {
     name: 'check',
@@ -35,7 +35,7 @@ export const MUTANTS: readonly Mutant[] = [
         replace: 'if (Number.isNaN(turn.nowMs)) {',
       },
     ],
-    seeds: [],
+    seeds: [2563, 3022],
   },
   {
     name: 'sync',
@@ -47,6 +47,6 @@ export const MUTANTS: readonly Mutant[] = [
         replace: "setTimeout(() => void this.#append({ type: 'note', note }).catch(() => undefined), 400);",
       },
     ],
-    seeds: [],
+    seeds: [862, 2371],
   },
 ];

@@ -2,9 +2,13 @@ import { MUTANTS } from './mutants';
 import { bundleMutant } from './mutate';
 import { scheduleOf } from './plan';
 import { faultsOn, inWorkshop, type Grounds } from './run-faults';
-import { isHeld } from './summary';
-import { runSchedule } from './wave';
+import { runSchedule, type Outcome } from './wave';
 import { BENCH_KINDS } from './workshop';
+
+/** A mutant that only takes long, or never ends, has not given itself away. */
+function isSeen({ lost, doubled, untold, moves }: Outcome): boolean {
+  return lost + doubled + untold + moves > 0;
+}
 
 /** @returns names and seeds of mutants that no schedule gave away: the harness, or the seed, is blind to them */
 export async function runMutants(grounds: Grounds, wanted = MUTANTS): Promise<string[]> {
@@ -26,8 +30,8 @@ export async function runMutants(grounds: Grounds, wanted = MUTANTS): Promise<st
           () => undefined,
         );
         const name = `${mutant.name}, seed ${seed}`;
-        grounds.say(`${name}: ${isHeld(outcome) ? 'NOT SEEN' : outcome.problems.join('; ')}`);
-        return isHeld(outcome) ? [name] : [];
+        grounds.say(`${name}: ${isSeen(outcome) ? outcome.problems.join('; ') : 'NOT SEEN'}`);
+        return isSeen(outcome) ? [] : [name];
       }),
     );
     return unseen.flat();
