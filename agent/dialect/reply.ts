@@ -48,7 +48,7 @@ const DEAD = /^(printer halted|printer stopped due to errors|kill\(\) called)/i;
 
 /** A reset may cut a line, so that its `start` is glued to the rest of it; the lines after it tell as well. */
 const BEGUN_ANEW: readonly RegExp[] = [
-  /^(?!\/\/|Error:|!!)(?:.*[^e])?start\s*$/,
+  /^(?!\/\/|Error:|!!)(?:.*(?<!re))?start\s*$/,
   /^Marlin \d/,
   /^(?:Info:|echo:)?\s*(?:PowerUp|(?:External|Brown out|Watchdog|Software) Reset)\s*$/i,
 ];
