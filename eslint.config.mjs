@@ -10,7 +10,7 @@ import { noEnvironment, rulesOf } from './scripts/lint/rules.mjs';
 const base = fileURLToPath(new URL('.', import.meta.url));
 
 export default defineConfig(
-  { ignores: ['node_modules/', '.next/', '.data/', 'next-env.d.ts', 'public/'] },
+  { ignores: ['node_modules/', '.next/', '.data/', 'dist-agent/', 'next-env.d.ts', 'public/'] },
   // A rule is never switched off from inside a file.
   { linterOptions: { noInlineConfig: true, reportUnusedDisableDirectives: 'error' } },
   ...tseslint.configs.recommended,

@@ -1,6 +1,5 @@
 import { request, Agent } from 'node:https';
 import type { IncomingMessage } from 'node:http';
-import { Readable } from 'node:stream';
 import { rootCertificates } from 'node:tls';
 
 /** Answers that have no body, which a `Response` refuses to be given one for (Fetch standard). */
@@ -38,6 +37,18 @@ function responseOf(answer: IncomingMessage): Response {
     answer.resume();
     return new Response(null, { status, headers });
   }
-  const body = new ReadableStream<Uint8Array>(Readable.toWeb(answer));
-  return new Response(body, { status, headers });
+  return new Response(streamOf(answer), { status, headers });
+}
+
+/** Chunk by chunk as it is read, so that an answer nobody reads fills no memory. */
+function streamOf(answer: IncomingMessage): ReadableStream<Uint8Array> {
+  const chunks: AsyncIterator<Uint8Array> = answer[Symbol.asyncIterator]();
+  return new ReadableStream({
+    async pull(controller) {
+      const { done, value } = await chunks.next();
+      if (done === true) controller.close();
+      else controller.enqueue(value);
+    },
+    cancel: () => void answer.destroy(),
+  });
 }

@@ -194,7 +194,8 @@ describe('an agent', () => {
       authenticateRecentAgent({ ctx: floor.system(), request: { headers: headers(software) } });
     const newest = { 'ellwand-agent': `ellwand-agent ${LEAST_AGENT_VERSION}` };
     expect(await enterFor(newest)).toMatchObject({ name: 'Bench' });
-    for (const old of [{}, { 'ellwand-agent': 'ellwand-agent 0.1.9' }]) {
+    const tooOld: Record<string, string>[] = [{}, { 'ellwand-agent': 'ellwand-agent 0.1.9' }];
+    for (const old of tooOld) {
       expect(await enter(headers(old))).toMatchObject({ name: 'Bench' });
       await expect(enterFor(old)).rejects.toEqual(errorCode('agent-too-old'));
     }

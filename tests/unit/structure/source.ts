@@ -3,7 +3,7 @@ import { join } from 'node:path';
 import ts from 'typescript';
 import { repo } from '@/scripts/house/repo.mjs';
 
-const NOT_OURS = /(^|\/)(node_modules|\.git|\.next|\.data)(\/|$)/;
+const NOT_OURS = /(^|\/)(node_modules|\.git|\.next|\.data|dist-agent)(\/|$)/;
 
 /** Paths below the repository of all files in `folder` whose path matches `pattern`, sorted. */
 export function filesIn(folder: string, pattern: RegExp): string[] {
