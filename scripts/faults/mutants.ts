@@ -18,7 +18,7 @@ export const MUTANTS: readonly Mutant[] = [
         replace: 'const counted: ReturnType<typeof registerOf> = run.cut;',
       },
     ],
-    seeds: [805, 2109],
+    seeds: [805, 2329],
   },
   {
     name: 'check',
@@ -35,7 +35,7 @@ export const MUTANTS: readonly Mutant[] = [
         replace: 'if (Number.isNaN(turn.nowMs)) {',
       },
     ],
-    seeds: [2563, 3022],
+    seeds: [2563, 3274],
   },
   {
     name: 'sync',

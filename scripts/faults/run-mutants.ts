@@ -30,6 +30,7 @@ export async function runMutants(grounds: Grounds, wanted = MUTANTS): Promise<st
           () => undefined,
         );
         const name = `${mutant.name}, seed ${seed}`;
+        if (!isSeen(outcome)) grounds.say(outcome.trace.join('\n'));
         grounds.say(`${name}: ${isSeen(outcome) ? outcome.problems.join('; ') : 'NOT SEEN'}`);
         return isSeen(outcome) ? [] : [name];
       }),

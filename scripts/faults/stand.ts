@@ -49,6 +49,7 @@ export class Stand {
   #onProgramLine: (count: number) => void = () => undefined;
   #programLines = 0;
   #partLine = '';
+  #lastNumber: string | undefined;
   #agent: ChildProcess | null = null;
   #restart: NodeJS.Timeout | null = null;
   #isDown = false;
@@ -200,9 +201,11 @@ export class Stand {
     const parts = (this.#partLine + chunk).split('\n');
     this.#partLine = parts.pop() ?? '';
     for (const part of parts) {
-      const text = part.replace(/^N\d+ /, '').replace(/\*\d+$/, '');
+      const [, number, text = ''] = /^(?:N(\d+) )?([^*]*)/.exec(part) ?? [];
       this.lines.push({ atMs: Date.now(), text });
-      if (ASKED.test(text)) continue;
+      const isAgain = number !== undefined && number === this.#lastNumber;
+      this.#lastNumber = number;
+      if (isAgain || ASKED.test(text)) continue;
       this.#programLines += 1;
       this.#onProgramLine(this.#programLines);
     }

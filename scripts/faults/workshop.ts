@@ -214,7 +214,7 @@ export class Workshop {
       repo: this.repo,
       agentProgram,
       pairingCode: offer.code,
-      settings: { ...settingsOf(profile, index), seed: number, name },
+      settings: { ...settingsOf(profile, index), seed: index + 1, name },
       ownDisk: this.ownDisks,
     });
     const bench = { kind: index, stand, wireId, profile };
