@@ -2,6 +2,7 @@ import { createHash } from 'node:crypto';
 import type { z } from 'zod';
 import { EllwandError } from '@/lib/errors';
 import { boundRigsSchema, runProgramSchema, type BoundRigs, type RunProgram } from '@/lib/protocol/pairing';
+import { PROTOCOL_VERSION } from '@/lib/protocol/version';
 import { backOffMs } from './back-off';
 import { callServer, type Server } from './server-call';
 import { pauseUntil } from './waiting';
@@ -43,7 +44,8 @@ async function ask<T>(
     if (result.ok) {
       const parsed = schema.safeParse(result.body);
       if (parsed.success) return parsed.data;
-      throw new EllwandError('protocol-unknown', { details: { path }, cause: parsed.error });
+      const details = { spoken: PROTOCOL_VERSION, path };
+      throw new EllwandError('protocol-unknown', { details, cause: parsed.error });
     }
     if (result.code !== 'service-away' || tries === TRIES || server.closing.aborted) {
       throw new EllwandError(result.code, { details: result.details, cause: result.cause });

@@ -1,12 +1,15 @@
 import type { ErrorCode } from '@/lib/errors';
 import type { Command } from '@/lib/protocol/commands';
-import { STREAM_PING_MS } from '@/lib/protocol/version';
+import { PROTOCOL_VERSION, STREAM_PING_MS } from '@/lib/protocol/version';
 import { backOffMs, slowBackOffMs } from './back-off';
 import type { Teller } from './notices';
 import { headersFor, problemOf, type Server } from './server-call';
 import { LineAssembler, readStreamLine } from './stream-lines';
 import { isSlow } from './upload-step';
 import { Deadline, pauseUntil } from './waiting';
+
+/** What cannot be read may be of another version than this one. */
+const SPOKEN = { spoken: PROTOCOL_VERSION };
 
 /** Three missed pings. */
 const SILENCE_MS = 3 * STREAM_PING_MS;
@@ -29,7 +32,7 @@ export async function followCommands(parts: Parts): Promise<void> {
     const begunMs = clock.nowMs();
     const { code, heard } = await listenOnce(parts);
     if (closing.aborted) return;
-    if (code) parts.teller.fails('commands', code);
+    if (code) parts.teller.fails('commands', code, code === 'protocol-unknown' ? SPOKEN : {});
     if (heard && clock.nowMs() - begunMs >= LIVED_MS) tries = 0;
     else tries += 1;
     if (tries === 0) continue;
@@ -87,7 +90,8 @@ function act({ teller, deliver, refuse }: Parts, text: string | null): void {
   if (read.read === 'other-protocol') throw new OtherProtocol();
   if (read.read === 'refuse') return refuse(read.commandId, read.code);
   if (read.read === 'nothing') {
-    teller.once('commands', 'bad-input', 'A line of the command stream could not be read. It was left out.');
+    const left = 'A line of the command stream could not be read. It was left out.';
+    teller.once('commands', 'bad-input', left, SPOKEN);
     return;
   }
   teller.works('commands');

@@ -6,6 +6,7 @@ import type { Clock } from '@/agent/clock';
 import { fileErrorCode, writeDurably } from '@/agent/journal/durable-file';
 import { EllwandError } from '@/lib/errors';
 import { pairingAnswerSchema, type Pairing } from '@/lib/protocol/pairing';
+import { PROTOCOL_VERSION } from '@/lib/protocol/version';
 import { callServer } from './server-call';
 
 const PAIR_TIMEOUT_MS = 10_000;
@@ -86,7 +87,10 @@ async function pair(options: PairOptions, code: string): Promise<AgentIdentity> 
   );
   if (!result.ok) throw new EllwandError(result.code, { details: result.details, cause: result.cause });
   const answer = pairingAnswerSchema.safeParse(result.body);
-  if (!answer.success) throw new EllwandError('protocol-unknown', { cause: answer.error });
+  if (!answer.success) {
+    const details = { spoken: PROTOCOL_VERSION };
+    throw new EllwandError('protocol-unknown', { details, cause: answer.error });
+  }
   const identity: AgentIdentity = { server, ...answer.data, pairedWith: sumOf(code) };
   await writeDurably(pathIn(dataDir), JSON.stringify(identity, null, 2), TOKEN_MODE);
   return identity;

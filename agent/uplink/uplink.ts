@@ -9,6 +9,7 @@ import { askForProgram, askForRigs } from './ask';
 import { followCommands } from './command-stream';
 import { uploadEvents } from './event-uploader';
 import { Teller, type Say } from './notices';
+import { refusalOf } from './refusal';
 import { reportRigs } from './reporter';
 import type { Server } from './server-call';
 import { SkewMeter } from './skew';
@@ -144,7 +145,7 @@ class ServerUplink implements Uplink {
       deliver: (command) => this.#deliver(command),
       refuse: (commandId, code) => {
         const at = this.#server.clock.date().toISOString();
-        if (this.#answerer.begin(commandId)) this.answer(commandId, { outcome: 'refused', at, code });
+        if (this.#answerer.begin(commandId)) this.answer(commandId, refusalOf(code, at));
       },
     });
   }

@@ -85,7 +85,13 @@ export const streamLineSchema = z.discriminatedUnion('line', [
 /** What the agent answers to one command (`POST /api/agent/commands/{id}/answer`). */
 export const commandAnswerSchema = z.discriminatedUnion('outcome', [
   z.object({ outcome: z.literal('done'), at: z.iso.datetime() }),
-  z.object({ outcome: z.literal('refused'), at: z.iso.datetime(), code: z.enum(errorCodes) }),
+  z.object({
+    outcome: z.literal('refused'),
+    at: z.iso.datetime(),
+    code: z.enum(errorCodes),
+    /** Told with `protocol-unknown`: the version that the agent speaks, in which there is no such command. */
+    details: z.object({ spoken: z.number().int() }).optional(),
+  }),
 ]);
 
 export type Conditions = z.infer<typeof conditionsSchema>;

@@ -9,6 +9,7 @@ import { parseInput } from '../parse';
 import { finishDrop } from '../runs/finish-drop';
 import { tell } from '../tell';
 import { inTransaction } from '../transaction';
+import { parseSpoken } from './parse-spoken';
 
 /**
  * Keeps the agent's answer to a command. The first answer stands, a second one changes nothing; an answer that comes
@@ -26,7 +27,7 @@ export async function answerCommand({
 }): Promise<void> {
   const { agentId } = authoriseAgent(ctx);
   const commandId = parseInput(z.uuid(), id);
-  const answer = parseInput(commandAnswerSchema, input);
+  const answer = parseSpoken(commandAnswerSchema, input);
   await inTransaction(ctx, async (inner) => {
     const mine = and(eq(commands.id, commandId), eq(commands.agentId, agentId));
     const [answered] = await inner.db

@@ -1,12 +1,14 @@
 import { z } from 'zod';
 import { EllwandError } from '@/lib/errors';
+import { unknownKindOf } from '@/lib/protocol/unknown-kind';
 import { PROTOCOL_VERSION } from '@/lib/protocol/version';
 import { parseInput } from '../parse';
 
 const versioned = z.object({ protocol: z.number() });
 
 /**
- * Parses what an agent sent; another version of the protocol is told as that, and not as a wrong field.
+ * Parses what an agent sent; another version of the protocol, and a kind that only another version can know, are told
+ * as that with the version spoken here, and not as a wrong field.
  * @throws EllwandError `protocol-unknown`, else as `parseInput`
  */
 export function parseSpoken<Schema extends z.ZodType>(schema: Schema, input: unknown): z.output<Schema> {
@@ -16,5 +18,10 @@ export function parseSpoken<Schema extends z.ZodType>(schema: Schema, input: unk
       details: { spoken: PROTOCOL_VERSION, heard: spoken.data.protocol },
     });
   }
+  const parsed = schema.safeParse(input);
+  if (parsed.success) return parsed.data;
+  const unknown = unknownKindOf(parsed.error, input);
+  if (unknown)
+    throw new EllwandError('protocol-unknown', { details: { spoken: PROTOCOL_VERSION, ...unknown } });
   return parseInput(schema, input);
 }
