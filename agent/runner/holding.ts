@@ -144,6 +144,7 @@ export function beginHoming(turn: Turn, measureAgain: boolean): void {
     measureAgain: false,
     measureAt: measureAgain ? (firstPieces > 0 ? run.cut + firstPieces : null) : run.measureAt,
     refusal: null,
+    saidAgain: 0,
     hold: null,
     stillSinceMs: null,
   });

@@ -141,6 +141,7 @@ export function heldRun(given: RunProgram, program: ReadProgram): Run {
     hold: null,
     unknown: false,
     refusal: null,
+    saidAgain: 0,
     jawsClosedMs: null,
     stillSinceMs: null,
   };

@@ -51,6 +51,8 @@ export interface Run {
   readonly unknown: boolean;
   /** What the firmware refused since the last piece counted. */
   readonly refusal: string | null;
+  /** How often the line at the cursor was said again because its answer did not show that it was done. */
+  readonly saidAgain: number;
   /** When the motion that closed the jaws had ended, epoch ms. */
   readonly jawsClosedMs: number | null;
   /** Since when it stands still with its steppers on, epoch ms; null: moving, or let go already. */

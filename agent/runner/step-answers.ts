@@ -28,6 +28,21 @@ function misfeedByRig(turn: Turn, reason: HoldReason, cause: MisfeedCause, note:
   beginSettle(turn, { to: 'held', reason, note });
 }
 
+/** A line whose answer is lost or wrong again and again is not answered by noise. */
+const SAID_AGAIN_MAX = 10;
+
+/** The line is said once more, unless that has been tried too often; what is open stays so until the rig is asked. */
+function sayAgain(turn: Turn): void {
+  const { run } = turn.state;
+  if (run?.mode !== 'moving') return;
+  const saidAgain = run.saidAgain + 1;
+  turn.setRun({ saidAgain });
+  if (saidAgain <= SAID_AGAIN_MAX) return;
+  requireHome(turn, false);
+  const note = 'The rig does not show that it did what it was told.';
+  beginSettle(turn, { to: 'held', reason: 'position-wrong', note });
+}
+
 /** What the answer to a line of the program means. */
 export function onStep(turn: Turn, cursor: Cursor, step: ProgramStep, answered: Answered): void {
   const { run } = turn.state;
@@ -38,16 +53,16 @@ export function onStep(turn: Turn, cursor: Cursor, step: ProgramStep, answered: 
   }
   if (step.kind === 'await') {
     // Taken is not done: only the ok of M400 says that motion has ended.
-    if (!answered.sure) return;
+    if (!answered.sure) return sayAgain(turn);
     turn.setRun({ jawsClosedMs: turn.nowMs });
     if (isTrimCut(run, cursor)) noteTrim(turn);
   }
   // A place is named before anything moves by it: said again until the rig shows the right one.
-  if (step.kind === 'declare' && !isDeclared(turn, step.cutAxisMm, answered)) return;
-  if (step.kind === 'ask' && !onAsk(turn, cursor, answered)) return;
+  if (step.kind === 'declare' && !isDeclared(turn, step.cutAxisMm, answered)) return sayAgain(turn);
+  if (step.kind === 'ask' && !onAsk(turn, cursor, answered)) return sayAgain(turn);
   if (step.kind === 'register') {
     // A line whose answer was lost is said again: it sets the same numbers.
-    if (!registered) return;
+    if (!registered) return sayAgain(turn);
     onRegister(turn, cursor, step.piece);
   }
   if (turn.state.run?.mode === 'moving') advance(turn, cursor);
@@ -65,6 +80,8 @@ function onAsk(turn: Turn, cursor: Cursor, { replies }: Answered): boolean {
   const { run, profile } = turn.state;
   const position = positionIn(replies);
   if (!run || !position) return false;
+  // This firmware tells its steps: a report without them was cut short, and so may be its last number.
+  if (run.standbyCount !== null && !position.count) return false;
   if (cursor.part === 'home') {
     if (!atStandby(position, profile)) return wrong(turn, position);
     turn.setRun({ standbyCount: position.count?.[profile.cutAxis.axis] ?? null });
@@ -100,6 +117,7 @@ function advance(turn: Turn, cursor: Cursor): void {
   const { run } = turn.state;
   if (!run) return;
   const next = { ...cursor, index: cursor.index + 1 };
+  turn.setRun({ saidAgain: 0 });
   if (next.index < stepsOf(run.program, cursor).length) {
     turn.setRun({ cursor: next });
     return;

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import type { CoreRequest } from '@/agent/virtual/core/controls';
-import { bareProfile } from './driven-rig';
+import { readReply } from '@/agent/dialect/reply';
+import { bareProfile, drivenRig, type DrivenRig } from './driven-rig';
 import { LinkedRig, type LinkedOptions } from './linked-rig';
 
 const PIECES = 4;
@@ -173,5 +174,105 @@ describe('the wire switch', () => {
     at.control({ do: 'wire', out: true });
     await at.stands();
     expect(at.driven.run.hold).toBe('wire-missing');
+  });
+});
+
+describe('a rig that is not believed', () => {
+  const ORDER = { pieces: 3, lengthMm: 200 };
+
+  /** In its second piece, the jaws shut, `M114` in flight. */
+  function atTheQuestion(): DrivenRig {
+    const rig = drivenRig(ORDER);
+    rig.start();
+    rig.driveTo(/^G92 Y170001/);
+    rig.driveTo(/^G1 Z5\.5/);
+    rig.driveTo(/^M114/);
+    return rig;
+  }
+
+  it('counts no cut that was clipped at the end stop: the steps in M114 show it, the coordinate does not', () => {
+    const rig = atTheQuestion();
+    rig.stepsShort = 3;
+    rig.driveTo(null);
+    expect(rig.run.hold).toBe('position-wrong');
+    expect(rig.said('piece-cut')).toHaveLength(1);
+  });
+
+  it('is asked again when its report was cut before the steps', () => {
+    const rig = atTheQuestion();
+    const told = readReply('X:0.00 Y:170001.00 Z:5.50 E:2');
+    rig.happens({ type: 'answered', sure: true, replies: [told, readReply('ok')] });
+    expect([rig.run.mode, rig.sent.at(-1)]).toEqual(['moving', 'M114']);
+    rig.driveTo(null);
+    expect(rig.said('piece-cut')).toHaveLength(3);
+  });
+
+  it('has its register written again when a digit too many made the feed 1 in place of 0', () => {
+    const rig = atTheQuestion();
+    rig.driveTo(/^G92 Y170002/);
+    const told = readReply('X:0.00 Y:170002.00 Z:5.50 E:1.00 Count X:0 Y:0 Z:550');
+    rig.happens({ type: 'answered', sure: true, replies: [told, readReply('ok')] });
+    expect(rig.said('piece-cut')).toHaveLength(1);
+    expect(rig.sent.slice(-2)).toEqual(['G92 Y170002 E0', 'G92 Y170002 E0']);
+  });
+
+  it('moves by no home position that it does not show', () => {
+    const rig = drivenRig(ORDER);
+    rig.start();
+    rig.driveTo(/^G92 Z10/);
+    const told = readReply('X:0.00 Y:0.00 Z:105.00 E:0.00 Count X:0 Y:0 Z:0');
+    rig.happens({ type: 'answered', sure: true, replies: [told, readReply('ok')] });
+    expect(rig.sent.slice(-2)).toEqual(['G92 Z10', 'G92 Z10']);
+  });
+
+  it('is held when it never shows what it was told, after a bounded number of times', () => {
+    const rig = atTheQuestion();
+    rig.driveTo(/^G92 Y170002/);
+    for (let times = 0; rig.run.mode === 'moving' && times < 100; times += 1) {
+      rig.happens({ type: 'answered', sure: true, replies: [readReply('ok')] });
+    }
+    expect(rig.sent.filter((line) => line === 'G92 Y170002 E0').length).toBeLessThan(20);
+    expect(rig.said('piece-cut')).toHaveLength(1);
+    rig.driveTo(null);
+    expect(rig.run.hold).toBe('position-wrong');
+    // It stood with the whole piece fed and the jaws shut: that one is registered by the answer, and counted.
+    expect(rig.said('piece-cut')).toHaveLength(2);
+    expect(rig.said('misfeed')).toEqual([]);
+  });
+});
+
+describe('a run without numbers and checksums', () => {
+  const profile = { ...bareProfile, serial: { ...bareProfile.serial, unnumbered: true } };
+
+  it.each(['marlin', 'repetier'] as const)('cuts and counts every piece once: %s', async (family) => {
+    const at = await inSecondPiece({ profile, rig: { firmware: { family } } });
+    const written: string[] = [];
+    at.onLine = (line) => written.push(line);
+    await at.stands();
+    expect(at.summary()).toMatch(/^ended/);
+    expect(written.filter((line) => /^N\d/.test(line))).toEqual([]);
+    everyPieceOnce(at);
+  });
+
+  it('is held by a lost ok, asks the rig by M114 where it stands, and says no line twice', async () => {
+    for (const lost of [/^G1 E/, /^G1 Z5\.5/, /^M400/, /^M114/, /^G92 Y17/, /^G1 Z8/]) {
+      const at = await inSecondPiece({ profile });
+      const written: string[] = [];
+      at.onLine = (line) => {
+        written.push(line);
+        if (!lost.test(line) || written.filter((other) => lost.test(other)).length > 1) return;
+        at.control({ do: 'ok', fault: 'swallow', count: 1 });
+      };
+      await at.stands();
+      expect([at.driven.run.hold, at.failures]).toEqual(['link-lost', ['silent']]);
+      expect(lost.test(written.at(-1) ?? '')).toBe(true);
+      await at.meet();
+      await at.until(() => at.driven.state.outstanding === null);
+      expect(written.slice(written.findIndex((line) => line === 'M115'))).toContain('M114');
+      expect(written.filter((line) => line.startsWith('G1 Z5.5')).length).toBeLessThanOrEqual(1);
+      await at.finish();
+      everyPieceOnce(at);
+      expect(at.settled).toEqual([]);
+    }
   });
 });
