@@ -31,6 +31,7 @@ function sent(profile: Profile): FormData {
   const texts = [...numbers, 'cutAxis.axis', 'cutAxis.homing', 'serial.baudRate'];
   const ticks = FITTED_FLAGS.filter(({ flag }) => profile.fitted[flag]).map(({ flag }) => `fitted.${flag}`);
   if (profile.serial.resetsOnOpen) ticks.push('serial.resetsOnOpen');
+  if (profile.serial.unnumbered) ticks.push('serial.unnumbered');
   return formOf({
     ...Object.fromEntries(texts.map((path) => [`profile.${path}`, valueAt(profile, path)])),
     ...Object.fromEntries(ticks.map((path) => [`profile.${path}`, 'on'])),
@@ -51,6 +52,12 @@ describe('the profile form', () => {
     profile.registerAxis = null;
     profile.serial.resetsOnOpen = false;
     profile.fitted = { ...profile.fitted, guardSwitch: null, display: false, hardwareStop: false };
+    expect(profileSchema.parse(readProfile(sent(profile)))).toEqual(profile);
+  });
+  it('asks for lines without numbers only when it is ticked; a profile of before has them', () => {
+    const profile = exampleRigProfile();
+    expect(profileSchema.parse(profile).serial.unnumbered).toBeUndefined();
+    profile.serial.unnumbered = true;
     expect(profileSchema.parse(readProfile(sent(profile)))).toEqual(profile);
   });
 });
