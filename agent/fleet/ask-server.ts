@@ -4,8 +4,11 @@ import { backOffMs } from '@/agent/uplink/back-off';
 import { loadCachedRigs, saveCachedRigs } from '@/agent/uplink/rigs-cache';
 import type { Uplink } from '@/agent/uplink/uplink';
 import { pauseUntil } from '@/agent/uplink/waiting';
-import { EllwandError } from '@/lib/errors';
+import { EllwandError, type ErrorCode } from '@/lib/errors';
 import type { BoundRigs } from '@/lib/protocol/pairing';
+
+/** Answers that only a person can change. Any other may be of something that stands before the server. */
+const REFUSALS: readonly ErrorCode[] = ['agent-too-old', 'token-refused', 'protocol-unknown'];
 
 type Asking = Pick<AgentEdges, 'clock' | 'random' | 'log'>;
 
@@ -47,7 +50,7 @@ export async function boundRigs(
     if (rigs) await saveCachedRigs(dataDir, rigs);
     return rigs;
   } catch (error) {
-    if (!kept || !isAway(error)) throw error;
+    if (!kept || !(error instanceof EllwandError) || REFUSALS.includes(error.code)) throw error;
     const message = 'The server does not answer. The rigs are taken as it told them last.';
     asking.log({ level: 'warning', code: 'service-away', message });
     return kept;
