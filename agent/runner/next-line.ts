@@ -1,11 +1,9 @@
 import type { ReplyKind } from '@/agent/dialect/reply';
+import { POLL_EVERY_MS } from '@/lib/program/guard';
 import type { ProgramStep } from '@/lib/program/steps';
 import { displayText } from './display';
 import { motionBoundMs } from './measures';
 import { stepsOf, type Cursor, type Purpose, type RigState, type Run } from './state';
-
-/** How often switches and heaters are read: idle, and between pieces. */
-export const POLL_EVERY_MS = 1_000;
 
 export interface NextLine {
   purpose: Purpose;

@@ -2,6 +2,7 @@
 
 import { useLive } from '@/components/live/live-provider';
 import { ageWords } from '@/components/live/time';
+import { guardWords } from '@/lib/program/guard';
 import type { RigDto } from '@/lib/schemas/floor';
 
 /** A reading older than this is shown as old, never as fact. */
@@ -12,21 +13,24 @@ interface Row {
   words: string;
   readAt: string | null;
   abnormal: boolean;
+  /** What it can and cannot do, beneath it. */
+  limits?: string;
 }
 
-function guardRow({ signals, fitted }: RigDto): Row {
+function guardRow({ signals, fitted, guardDelayS }: RigDto): Row {
   const guard = signals?.guard ?? { reading: 'unknown' as const };
+  const limits = fitted ? guardWords(guardDelayS) : undefined;
   const power = fitted?.guardCutsMotorPower ? ', wired to cut motor power' : ', not wired to motor power';
   const name = 'Guard';
   switch (guard.reading) {
     case 'closed':
-      return { name, words: `closed${power}`, readAt: guard.readAt, abnormal: false };
+      return { name, words: `closed${power}`, readAt: guard.readAt, abnormal: false, limits };
     case 'open':
-      return { name, words: `open${power}`, readAt: guard.readAt, abnormal: true };
+      return { name, words: `open${power}`, readAt: guard.readAt, abnormal: true, limits };
     case 'unknown':
-      return { name, words: 'not read: look at the guard', readAt: null, abnormal: true };
+      return { name, words: 'not read: look at the guard', readAt: null, abnormal: true, limits };
     default:
-      return { name, words: 'no switch fitted: look that it is shut', readAt: null, abnormal: false };
+      return { name, words: 'no switch fitted: look that it is shut', readAt: null, abnormal: false, limits };
   }
 }
 
@@ -98,6 +102,7 @@ export function Signals({ rig }: { rig: RigDto }) {
               <span className="grow">
                 <strong>{row.name}</strong>{' '}
                 <span className={old ? 'text-soft line-through' : ''}>{row.words}</span>
+                {row.limits ? <span className="block text-soft">{row.limits}</span> : null}
               </span>
               <span className="shrink-0 text-soft">
                 {ageMs === null ? '–' : `${old ? 'old, ' : ''}${ageWords(ageMs)} ago`}

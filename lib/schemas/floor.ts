@@ -39,6 +39,8 @@ export const rigDtoSchema = z.object({
   virtualDisplay: z.string().nullable(),
   signals: signalsSchema.nullable(),
   fitted: profileSchema.shape.fitted.nullable(),
+  /** By `guardDelayS` for the run's length, else the profile's longest; null: nothing tells of the guard, or no profile. */
+  guardDelayS: z.number().nullable(),
   profileVersion: z.number().int().nullable(),
   notesVersion: z.number().int().nullable(),
   workHold: z

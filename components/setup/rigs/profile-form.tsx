@@ -5,6 +5,7 @@ import type { Profile } from '@/lib/program/profile';
 import { FormCheck, FormNumber, FormSelect, FormText } from '../form/fields';
 import { textOf } from '../form/read';
 import { SetupForm, type SetupAction } from '../form/setup-form';
+import { GuardLimits } from './guard-limits';
 import {
   CUT_AXIS_NUMBERS,
   FEED_NUMBERS,
@@ -140,6 +141,7 @@ function Fitted({ profile }: { profile: Profile | null }) {
           defaultChecked={profile?.fitted[flag] ?? false}
         />
       ))}
+      {profile ? <GuardLimits profile={profile} /> : null}
     </Section>
   );
 }

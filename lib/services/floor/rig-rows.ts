@@ -6,6 +6,7 @@ import { blades, spools, wires } from '@/db/schema/stock';
 import { alarms } from '@/db/schema/traffic';
 import { type RigFacts, rigState } from '@/lib/fleet/rig-state';
 import { RUN_ACTIVE } from '@/lib/fleet/run';
+import { guardDelayS } from '@/lib/program/guard';
 import type { AlarmDto, RigDto } from '@/lib/schemas/floor';
 import type { RunDto } from '@/lib/schemas/run';
 import { bladeDto } from '../blades/blade-dto';
@@ -98,6 +99,7 @@ function rigDto(row: Row, run: RunDto | null, standing: AlarmDto[], now: Date): 
     virtualDisplay: report?.virtualDisplay ?? null,
     signals: report?.signals ?? null,
     fitted: row.profile?.fitted ?? null,
+    guardDelayS: row.profile ? guardDelayS(row.profile, run?.lengthMm) : null,
     profileVersion: row.profileVersion,
     notesVersion: row.notesVersion,
     workHold: workHoldDto(row),

@@ -73,6 +73,7 @@ export function aRig(over: Partial<RigDto> = {}): RigDto {
     virtualDisplay: null,
     signals: null,
     fitted: null,
+    guardDelayS: null,
     profileVersion: 1,
     notesVersion: 1,
     workHold: null,
