@@ -1,15 +1,16 @@
-import { createHash } from 'node:crypto';
+import { createHash, randomBytes } from 'node:crypto';
 import { mkdir, readFile } from 'node:fs/promises';
 import { join } from 'node:path';
 import { z } from 'zod';
 import type { Clock } from '@/agent/clock';
-import { fileErrorCode, writeDurably } from '@/agent/journal/durable-file';
+import { fileErrorCode, removeDurably, writeDurably } from '@/agent/journal/durable-file';
 import { EllwandError } from '@/lib/errors';
 import { pairingAnswerSchema, type Pairing } from '@/lib/protocol/pairing';
 import { PROTOCOL_VERSION } from '@/lib/protocol/version';
 import { callServer } from './server-call';
 
 const PAIR_TIMEOUT_MS = 10_000;
+const TOKEN_BYTES = 32;
 /** Read and written by the agent's user alone. */
 const TOKEN_MODE = 0o600;
 
@@ -22,6 +23,9 @@ const identitySchema = z.object({
   /** SHA-256 of the code that bought it: another code in the configuration means "pair again". */
   pairedWith: z.string(),
 });
+
+/** What was proposed with a code; kept until the answer is, which may be lost on the way. */
+const proposalSchema = identitySchema.pick({ token: true, pairedWith: true });
 
 /** Who this agent is to its server. */
 export type AgentIdentity = z.infer<typeof identitySchema>;
@@ -80,7 +84,8 @@ export async function loadIdentity(dataDir: string): Promise<AgentIdentity | nul
 
 async function pair(options: PairOptions, code: string): Promise<AgentIdentity> {
   const { server, clock, fetch, closing, software, dataDir } = options;
-  const body: Pairing = { protocol: 1, code, software };
+  const { token } = await proposalFor(dataDir, code);
+  const body: Pairing = { protocol: 1, code, software, token };
   const result = await callServer(
     { address: server, token: null, clock, fetch, closing },
     { method: 'POST', path: '/api/agent/pair', body, timeoutMs: PAIR_TIMEOUT_MS },
@@ -93,7 +98,33 @@ async function pair(options: PairOptions, code: string): Promise<AgentIdentity> 
   }
   const identity: AgentIdentity = { server, ...answer.data, pairedWith: sumOf(code) };
   await writeDurably(pathIn(dataDir), JSON.stringify(identity, null, 2), TOKEN_MODE);
+  await removeDurably(proposalIn(dataDir));
   return identity;
+}
+
+/** The token that goes with a code: the same at each try, so that a code whose answer was lost is not lost with it. */
+async function proposalFor(dataDir: string, code: string): Promise<z.infer<typeof proposalSchema>> {
+  const pairedWith = sumOf(code);
+  const kept = await readProposal(dataDir);
+  if (kept?.pairedWith === pairedWith) return kept;
+  const proposal = { token: randomBytes(TOKEN_BYTES).toString('base64url'), pairedWith };
+  await writeDurably(proposalIn(dataDir), JSON.stringify(proposal), TOKEN_MODE);
+  return proposal;
+}
+
+/** A damaged proposal is worth nothing: another is made. */
+async function readProposal(dataDir: string): Promise<z.infer<typeof proposalSchema> | null> {
+  try {
+    const parsed = proposalSchema.safeParse(JSON.parse(await readFile(proposalIn(dataDir), 'utf8')));
+    return parsed.success ? parsed.data : null;
+  } catch (cause) {
+    if (cause instanceof SyntaxError || fileErrorCode(cause) === 'ENOENT') return null;
+    throw cause;
+  }
+}
+
+function proposalIn(dataDir: string): string {
+  return join(dataDir, 'pairing.json');
 }
 
 function sumOf(code: string): string {

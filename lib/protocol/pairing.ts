@@ -6,6 +6,8 @@ export const pairingSchema = z.object({
   protocol: z.literal(1),
   code: z.string().min(8).max(40),
   software: z.string().max(40),
+  /** The token that the agent made and would go by: asked again with it after a lost answer, it is paired once. */
+  token: z.string().min(32).max(128).optional(),
 });
 
 /** The token is told this once and stored hashed. */

@@ -47,6 +47,19 @@ describe('a pairing code', () => {
     await expect(pair(offered)).rejects.toEqual(code('pairing-refused'));
   });
 
+  it('gives an agent that asks again with the token it made the same answer, and nobody else', async () => {
+    const ctx = await world.as('owner');
+    const { code: offered, agentId } = await addAgent({ ctx, input: { name: 'Again', rigIds: [] } });
+    const ask = (token: string) =>
+      pairAgent({ ctx: world.system(), input: { protocol: 1, code: offered, software: 'test', token } });
+    const token = 'a-token-that-the-agent-has-made-itself';
+    const first = await ask(token);
+    expect(first).toEqual({ agentId, name: 'Again', token });
+    expect(await ask(token)).toEqual(first);
+    await expect(ask(`${token}-of-another`)).rejects.toEqual(code('pairing-refused'));
+    await expect(pair(offered)).rejects.toEqual(code('pairing-refused'));
+  });
+
   it('is too old after thirty minutes', async () => {
     const ctx = await world.as('owner');
     const { code: offered } = await addAgent({ ctx, input: { name: 'Late', rigIds: [] } });

@@ -9,8 +9,18 @@ import { inTransaction } from '../transaction';
 import { parseSpoken } from './parse-spoken';
 import { hashSecret, hashesMatch, newToken, plainCode } from './secrets';
 
+/** The agent that was paired with a token before: its first answer was lost on the way. */
+async function pairedBefore(ctx: ServiceContext, token: string): Promise<PairingAnswer | null> {
+  const [agent] = await ctx.db
+    .select({ id: agents.id, name: agents.name })
+    .from(agents)
+    .where(and(eq(agents.tokenHash, hashSecret(token)), isNull(agents.revokedAt)));
+  return agent ? { agentId: agent.id, name: agent.name, token } : null;
+}
+
 /**
- * Trades a one-time code for a token, told this once. The code is used up by it.
+ * Trades a one-time code for a token, the agent's own or a new one that is told this once. The code is used up by it;
+ * asked again with the same token the answer is the same.
  * @throws EllwandError `pairing-refused` for a code that is wrong, used or too old.
  */
 export async function pairAgent({
@@ -20,10 +30,12 @@ export async function pairAgent({
   ctx: ServiceContext;
   input: unknown;
 }): Promise<PairingAnswer> {
-  const { code, software } = parseSpoken(pairingSchema, input);
+  const { code, software, token: proposed } = parseSpoken(pairingSchema, input);
   const codeHash = hashSecret(plainCode(code));
-  const token = newToken();
+  const token = proposed ?? newToken();
   return inTransaction(ctx, async (inner) => {
+    const before = proposed === undefined ? null : await pairedBefore(inner, proposed);
+    if (before) return before;
     const [agent] = await inner.db
       .select()
       .from(agents)
