@@ -36,8 +36,10 @@ export async function lookAtServer(
     const response = await answerOf(config.server, token, edges);
     server.reachable = true;
     server.clockSkewMs = skewOf(response.headers.get('date'), sentMs, edges.clock.date().getTime());
-    if (Math.abs(server.clockSkewMs ?? 0) > COMMAND_MAX_AGE_MS) {
-      const says = `This computer's clock is ${Math.round((server.clockSkewMs ?? 0) / 1_000)} s behind the server's.`;
+    const skewMs = server.clockSkewMs ?? 0;
+    if (Math.abs(skewMs) > COMMAND_MAX_AGE_MS) {
+      const side = skewMs > 0 ? 'behind' : 'ahead of';
+      const says = `This computer's clock is ${Math.round(Math.abs(skewMs) / 1_000)} s ${side} the server's.`;
       tell('clock-skew', says, 'Let both keep the time of the same time server (NTP).');
     }
     const body: unknown = await response.json().catch(() => undefined);

@@ -1,13 +1,7 @@
 import { eq } from 'drizzle-orm';
 import { agents } from '@/db/schema/rigs';
 import { EllwandError } from '@/lib/errors';
-import {
-  isRecentAgent,
-  LEAST_AGENT_VERSION,
-  PROTOCOL_HEADER,
-  PROTOCOL_VERSION,
-  SOFTWARE_HEADER,
-} from '@/lib/protocol/version';
+import { PROTOCOL_HEADER, PROTOCOL_VERSION } from '@/lib/protocol/version';
 import { authoriseSystem } from '../authorise';
 import type { AgentActor, ServiceContext } from '../context';
 import { hashSecret, hashesMatch } from './secrets';
@@ -40,19 +34,4 @@ export async function authenticateAgent({
   if (!agent?.tokenHash || !hashesMatch(agent.tokenHash, tokenHash)) throw new EllwandError('token-refused');
   if (agent.revokedAt) throw new EllwandError('token-refused', { details: { revoked: true } });
   return { kind: 'agent', agentId: agent.id, name: agent.name };
-}
-
-/**
- * The same for what a run begins with, its rigs and its program. An agent that is too old may report, hand over what
- * it counted and be stopped; it is given nothing to start.
- * @throws EllwandError `agent-too-old` besides
- */
-export async function authenticateRecentAgent(call: {
-  ctx: ServiceContext;
-  request: { headers: Headers };
-}): Promise<AgentActor> {
-  const actor = await authenticateAgent(call);
-  const heard = call.request.headers.get(SOFTWARE_HEADER);
-  if (isRecentAgent(heard)) return actor;
-  throw new EllwandError('agent-too-old', { details: { least: LEAST_AGENT_VERSION, heard } });
 }

@@ -1,5 +1,5 @@
 import { agentRoute } from '@/lib/http/route';
-import { authenticateRecentAgent } from '@/lib/services/traffic/authenticate-agent';
+import { authenticateRecentAgent } from '@/lib/services/traffic/authenticate-recent-agent';
 import { listBoundRigs } from '@/lib/services/traffic/list-bound-rigs';
 
 export const GET = agentRoute(authenticateRecentAgent, ({ ctx }) => listBoundRigs({ ctx }));

@@ -1,5 +1,5 @@
 import { agentRoute } from '@/lib/http/route';
-import { authenticateRecentAgent } from '@/lib/services/traffic/authenticate-agent';
+import { authenticateRecentAgent } from '@/lib/services/traffic/authenticate-recent-agent';
 import { readRunProgram } from '@/lib/services/traffic/read-run-program';
 
 export const GET = agentRoute<{ runId: string }>(authenticateRecentAgent, ({ ctx, params }) =>
