@@ -35,7 +35,7 @@ export const MUTANTS: readonly Mutant[] = [
         replace: 'if (Number.isNaN(turn.nowMs)) {',
       },
     ],
-    seeds: [2563, 3274],
+    seeds: [1447, 3058],
   },
   {
     name: 'sync',

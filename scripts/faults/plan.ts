@@ -40,7 +40,7 @@ const MAKERS: Record<RigFaultKind, (random: Random) => RigFault> = {
   unplugged: (random) => ({ kind: 'unplugged', forMs: between(random, 50, 600) }),
   noise: (random) => ({
     kind: 'noise',
-    noise: pick(random, ['flip', 'drop', 'double']),
+    noise: pick(random, ['flip', 'drop', 'double', 'pair']),
     direction: pick(random, ['in', 'out']),
     bytes: between(random, 1, 3),
   }),

@@ -25,7 +25,7 @@ export const controlRequestSchema = z.discriminatedUnion('do', [
   z.strictObject({ do: z.literal('usb'), plugged: z.boolean(), path: z.string().min(1).optional() }),
   z.strictObject({
     do: z.literal('noise'),
-    kind: z.enum(['flip', 'drop', 'double']),
+    kind: z.enum(['flip', 'drop', 'double', 'pair']),
     direction,
     bytes: z.number().int().min(0),
     probability: z.number().min(0).max(1).default(1),

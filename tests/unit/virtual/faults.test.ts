@@ -22,6 +22,15 @@ describe('a bad line', () => {
     expect(rig.put('G90\n')).toEqual(expected.split('\n').slice(0, -1));
   });
 
+  it('can flip one bit of two letters, which the checksum does not notice: the line is taken and not carried out', () => {
+    const rig = new RigAtHand({ seed: 3 });
+    control(rig.core, { do: 'noise', kind: 'pair', direction: 'in', bytes: 1, probability: 1 });
+    rig.put('N1 M400*38\n');
+    const answers = rig.put('N2 G1 Z0 F600*48\n');
+    expect(answers[0]).toMatch(/^echo:Unknown command: "[^G]1 Z0 [^F]600\*48"$/);
+    expect(answers[1]).toBe('ok');
+  });
+
   it('disturbs no more bytes than it was told', () => {
     const rig = new RigAtHand();
     control(rig.core, { do: 'noise', kind: 'drop', direction: 'out', bytes: 3, probability: 1 });
