@@ -1,7 +1,7 @@
 import type { Clock } from '@/agent/clock';
 
 /** The server hears of news this much later: a rig's next lines, a few ms apart, go out before any call is made. */
-export const GATHER_MS = 20;
+export const GATHER_MS = 10;
 
 /** Resolves after `ms`, or at once when `closing` is aborted. */
 export function pauseUntil(clock: Clock, ms: number, closing: AbortSignal): Promise<void> {

@@ -19,7 +19,7 @@ function partS(lines: readonly ProgramLine[]): number {
   return motionS(lines) + (lines.length + LINES_BETWEEN) * SLOW_LINE_S;
 }
 
-/** Homing as slow as any firmware homes, in place of the generator's usual speed. */
+/** Homing as slowly as the slowest firmware homes, in place of the generator's usual speed. */
 function homeS(profile: Profile): number {
   const lines = homeLines(profile);
   const moved = lines.filter(({ text }) => !text.startsWith('G28'));

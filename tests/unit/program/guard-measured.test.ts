@@ -16,7 +16,7 @@ function profileWith(change: Partial<Profile['fitted']>): Profile {
   return { ...bareProfile, cutAxis, fitted: { ...bareProfile.fitted, guardSwitch, ...change } };
 }
 
-/** The agent at a rig that homes as slowly as any, from the far end of its travel. */
+/** The agent at a rig that homes as slowly as the slowest, from the far end of its travel. */
 async function started(profile: Profile, lengthMm: number): Promise<LinkedRig> {
   const { axis, lowestMm } = profile.cutAxis;
   const input = rigOfProfile(profile);
