@@ -214,7 +214,7 @@ it('a port that two boards could be is refused with what to do, until one of the
   await curlew.rig.control({ do: 'usb', plugged: false });
   ports = [clone('1-1.1', 'one'), clone('1-1.1', 'two')];
   const { portProblem } = await until(curlew, ({ port }) => port === 'refused', 'is refused');
-  expect(portProblem).toMatch(/one and .*two .*configuration/);
+  expect(portProblem).toMatch(/^Add "usbPath" .* in the configuration: both .*one and .*two/);
   await curlew.rig.control({ do: 'usb', plugged: true, path: join(folder, 'one') });
   ports = [clone('1-1.1', 'one')];
   await ready(curlew);
