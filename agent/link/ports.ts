@@ -83,7 +83,7 @@ function tooMany(wish: PortWish, one: PortSeen, other: PortSeen): string {
       ? `"serialNumber" (${one.serialNumber} or ${other.serialNumber})`
       : `"usbPath" (${one.usbPath ?? 'unknown'} or ${other.usbPath ?? 'unknown'})`;
   // What to do comes first: the server keeps 200 characters of it.
-  return `Add ${add} to the rig's port in the configuration: both ${one.path} and ${other.path} are ${describeWish(wish)}.`;
+  return `Add ${add} to its port in the configuration: both ${one.path} and ${other.path} are ${describeWish(wish)}.`;
 }
 
 /** Looks for a rig's port anew each time; a path is taken as it is, unless another rig's identity means it too. */
