@@ -64,22 +64,27 @@ function readLog(name, error) {
 }
 
 /**
- * Two lanes, for two cores: what needs no service, one after the other, beside tests that mostly wait for theirs.
+ * Two lanes, for two cores, each with work that computes and work that waits: first what needs no service beside the
+ * build and the tests of services, then the faults beside the browser.
  * @returns {Promise<Tally>}
  */
-async function beforeTheBrowser() {
+async function everything() {
+  const build = check('build', process.execPath, [join(repo, 'scripts/build.mjs'), '--for-tests']);
   const withoutServices = async () => {
     const lint = await check('lint', join(bin, 'eslint'), ['.']);
     const format = await check('format', join(bin, 'prettier'), ['--check', '.']);
     const types = await check('types', join(bin, 'tsc'), ['--noEmit']);
-    return [lint, format, types, await test('unit', { show: false })].reduce(addTally);
+    const unit = await test('unit', { show: false });
+    await build;
+    return [lint, format, types, unit, await underFaults()].reduce(addTally);
   };
   const withServices = async () => {
-    const build = await check('build', process.execPath, [join(repo, 'scripts/build.mjs'), '--for-tests']);
-    return addTally(build, await test('integration', { show: true }));
+    const built = await build;
+    const integration = await test('integration', { show: true });
+    return [built, integration, await test('browser', { show: true })].reduce(addTally);
   };
   const lanes = await Promise.all([withoutServices(), withServices()]);
-  return [...lanes, await nothingLeft('unit and integration')].reduce(addTally);
+  return [...lanes, await nothingLeft()].reduce(addTally);
 }
 
 /** @returns {Promise<Tally>} the fixed seeds of the fault harness, and agents that lack something on theirs */
@@ -87,7 +92,7 @@ async function underFaults() {
   const program = join(repo, 'scripts/faults.mjs');
   const held = await check('faults', process.execPath, [program, '--schedules', '25', '--seed', '1']);
   const seen = await check('mutants', process.execPath, [program, '--mutants']);
-  return [held, seen, await nothingLeft('faults')].reduce(addTally);
+  return addTally(held, seen);
 }
 
 /**
@@ -123,11 +128,11 @@ function readReport(file) {
   }
 }
 
-/** @param {string} project @returns {Promise<Tally>} a failure when the tests have left a process running */
-async function nothingLeft(project) {
+/** @returns {Promise<Tally>} a failure when the tests have left a process running */
+async function nothingLeft() {
   const left = await endLeftRunning(run);
   if (left.length === 0) return emptyTally();
-  say(`The ${project} tests left running:\n  ${left.join('\n  ')}`);
+  say(`The tests left running:\n  ${left.join('\n  ')}`);
   return { ...emptyTally(), failed: 1 };
 }
 
@@ -138,10 +143,7 @@ let total = emptyTally();
 try {
   await ensureNpmPackages({ say, signal });
   await ensureDebianPackages([...servicePackages, chromiumPackage], { say, signal });
-  total = await beforeTheBrowser();
-  total = addTally(total, await test('browser', { show: true }));
-  total = addTally(total, await nothingLeft('browser'));
-  total = addTally(total, await underFaults());
+  total = await everything();
 } catch (error) {
   printTrouble(error);
   total = addTally(total, { ...emptyTally(), failed: 1 });
