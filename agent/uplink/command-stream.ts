@@ -35,8 +35,10 @@ export async function followCommands(parts: Parts): Promise<void> {
     if (code) parts.teller.fails('commands', code, code === 'protocol-unknown' ? SPOKEN : {});
     if (heard && clock.nowMs() - begunMs >= LIVED_MS) tries = 0;
     else tries += 1;
-    if (tries === 0) continue;
-    const ms = code && isSlow(code) ? slowBackOffMs(parts.random()) : backOffMs(tries, parts.random());
+    // However long it lived: what only a person can mend is not better at once.
+    const isHopeless = code !== null && isSlow(code);
+    if (tries === 0 && !isHopeless) continue;
+    const ms = isHopeless ? slowBackOffMs(parts.random()) : backOffMs(tries, parts.random());
     await pauseUntil(clock, ms, closing);
   }
 }
