@@ -64,8 +64,7 @@ function readLog(name, error) {
 }
 
 /**
- * Two lanes, for two cores, each with work that computes and work that waits: first what needs no service beside the
- * build and the tests of services, then the faults beside the browser.
+ * Two lanes, for two cores: one computes and then waits, the other waits and then shares the cores.
  * @returns {Promise<Tally>}
  */
 async function everything() {
@@ -80,8 +79,9 @@ async function everything() {
   };
   const withServices = async () => {
     const built = await build;
-    const integration = await test('integration', { show: true });
-    return [built, integration, await test('browser', { show: true })].reduce(addTally);
+    // The browser, one test after the other, beside what computes; the tests that mostly wait beside the faults.
+    const browser = await test('browser', { show: true });
+    return [built, browser, await test('integration', { show: true })].reduce(addTally);
   };
   const lanes = await Promise.all([withoutServices(), withServices()]);
   return [...lanes, await nothingLeft()].reduce(addTally);
