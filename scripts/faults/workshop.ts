@@ -19,6 +19,7 @@ import { addSpool } from '@/lib/services/spools/add-spool';
 import { loadSpool } from '@/lib/services/spools/load-spool';
 import { addWire } from '@/lib/services/wires/add-wire';
 import type { ContextNow } from '@/scripts/hands/actors';
+import { benchProfile } from '@/tests/support/agent-bench';
 import type { RunRecord } from './judge';
 import type { Glance } from './people';
 import { canMount, Stand } from './stand';
@@ -188,11 +189,11 @@ export class Workshop {
     return { db: this.db, now: new Date(), requestId: 'faults' };
   }
 
-  async #addBench({ kind: index, agentProgram }: WantedBench): Promise<void> {
+  async #addBench({ kind, agentProgram }: WantedBench): Promise<void> {
     const ctx = this.now();
     const number = this.benches.length + 1;
     const name = `Rig ${number}`;
-    const profile = profileOf(index);
+    const profile = profileOf(kind);
     const made = { gaugeAwg: 26 + 2 * Math.floor(number / COLOURS.length), conductor: 'silvered copper' };
     const sheath = { insulation: 'ETFE', outsideDiameterMm: 0.5 };
     const colour = COLOURS[number % COLOURS.length];
@@ -214,64 +215,41 @@ export class Workshop {
       repo: this.repo,
       agentProgram,
       pairingCode: offer.code,
-      settings: { ...settingsOf(profile, index), seed: index + 1, name },
+      settings: { ...settingsOf(profile, kind), seed: kind + 1, name },
       ownDisk: this.ownDisks,
     });
-    const bench = { kind: index, stand, wireId, profile };
+    const bench = { kind, stand, wireId, profile };
     this.benches.push(bench);
     await this.loadNewSpool(bench);
   }
 }
 
 /** The benches differ in what is fitted and in how the board takes an opened port. */
-function profileOf(index: number): Profile {
+function profileOf(kind: number): Profile {
   return {
-    cutAxis: {
-      axis: 'Z',
-      homing: 'endstop',
-      homeMm: 10,
-      standbyMm: 8,
-      cutMm: 5.5,
-      parkMm: 12,
-      lowestMm: 5,
-      highestMm: 20,
-      speedMmS: 25,
-      accelerationMmS2: 500,
-      stepsPerMm: 100,
-    },
-    feed: {
-      feedPerMm: 1,
-      speedMmS: 60,
-      accelerationMmS2: 1000,
-      longestMoveMm: 50,
-      shortestPieceMm: 10,
-      longestPieceMm: 3000,
-      trimMm: 12,
-    },
-    registerAxis: 'Y',
-    steppersHoldS: 600,
+    ...benchProfile,
+    // Two feeds to most pieces, so that there is something between them.
+    feed: { ...benchProfile.feed, longestMoveMm: 50 },
     fitted: {
-      guardSwitch: { endstop: 'x_max', closedReads: 'TRIGGERED' },
-      guardCutsMotorPower: index % 2 === 1,
-      hardwareStop: false,
-      wireSwitch: true,
-      display: index % 4 === 0,
+      ...benchProfile.fitted,
+      guardCutsMotorPower: kind % 2 === 1,
+      display: kind % 4 === 0,
       beeper: false,
-      heater: index % 3 === 0,
-      emergencyParser: index % 4 < 2,
+      heater: kind % 3 === 0,
+      emergencyParser: kind % 4 < 2,
     },
-    serial: { baudRate: 115200, resetsOnOpen: index % 4 >= 2 },
+    serial: { ...benchProfile.serial, resetsOnOpen: kind % 4 >= 2 },
   };
 }
 
-function settingsOf({ fitted, serial, registerAxis }: Profile, index: number): RigInput {
+function settingsOf({ fitted, serial, registerAxis }: Profile, kind: number): RigInput {
   return {
     resetOnOpen: serial.resetsOnOpen,
     registerAxis: registerAxis ?? 'Y',
     firmware: {
       emergencyParser: fitted.emergencyParser,
       display: fitted.display,
-      advancedOk: index % 3 === 1,
+      advancedOk: kind % 3 === 1,
       // On the wall clock: as much faster as the agent's waits are.
       keepaliveMs: 500,
     },
